@@ -1,0 +1,1 @@
+export type { Samples } from "./samples.ts";

@@ -1,0 +1,1 @@
+export { createRandom, type SeededRandom } from "./seeded-random.ts";

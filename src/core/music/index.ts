@@ -1,0 +1,1 @@
+export type { ActivationCurves, Analysis, Moment, MusicSection } from "./analysis.ts";
