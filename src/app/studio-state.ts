@@ -1,0 +1,55 @@
+import type { ShowCheck, ShowFlight } from "../core/flight/index.ts";
+import type { LightProgram } from "../core/light/index.ts";
+import type { Analysis } from "../core/music/index.ts";
+import type { FleetSlots, Show } from "../core/show/index.ts";
+
+/** Work under way that takes longer than a blink. */
+export interface Job {
+	readonly id: string;
+	/** As the user reads it: "Listening to the soundtrack". */
+	readonly name: string;
+	/** 0..1, or null where unknown. */
+	readonly share: number | null;
+	readonly stage: string;
+}
+
+/** A sentence for the user; errors stay until they are put away. */
+export interface Notice {
+	readonly id: string;
+	readonly kind: "error" | "caution" | "done";
+	readonly text: string;
+}
+
+/** What is selected: Detail tells about it. */
+export type Selection =
+	| { readonly kind: "nothing" }
+	| { readonly kind: "cues"; readonly ids: readonly string[] }
+	| { readonly kind: "section"; readonly id: string }
+	| { readonly kind: "formation"; readonly id: string };
+
+/** Everything the screens show. Typed arrays (plans, peaks, curves) are held by reference and never patched. */
+export interface StudioState {
+	readonly show: Show | null;
+	/** Why edits are refused: another tab has this show, or it is newer than this program. Null: edits are taken. */
+	readonly readOnly: string | null;
+	/** Base name of the file that the show was opened from or saved to. */
+	readonly fileName: string | null;
+	/** True when there are edits that no file holds yet (the autosave holds them always). */
+	readonly unsaved: boolean;
+	/** The soundtrack's bytes are here and decoded, so it can be played. */
+	readonly audioReady: boolean;
+	readonly analysis: Analysis | null;
+	/** Follow from the show; recomputed after each edit. Null until first computed or where it can't be. */
+	readonly slots: ReadonlyMap<string, FleetSlots> | null;
+	readonly light: LightProgram | null;
+	readonly flight: ShowFlight | null;
+	readonly check: ShowCheck | null;
+	/** Ids of transitions (and "launch", "landing") whose answer is older than the show. */
+	readonly unchecked: ReadonlySet<string>;
+	readonly selection: Selection;
+	readonly jobs: readonly Job[];
+	readonly notices: readonly Notice[];
+	/** What undo and redo would take back or bring again, as the user reads it; null: nothing. */
+	readonly undo: string | null;
+	readonly redo: string | null;
+}
