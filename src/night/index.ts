@@ -1,0 +1,3 @@
+export type { NightViewpoint } from "./camera.ts";
+export type { NightMarks } from "./marks.ts";
+export { createNightView, type NightFrame, type NightView } from "./night-view.ts";
