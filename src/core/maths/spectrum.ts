@@ -1,0 +1,91 @@
+/**
+ * Spectra of real signals. A real transform of n samples is done as a complex one of n/2 (even samples real, odd
+ * samples imaginary) and taken apart afterwards (Press et al., Numerical Recipes, §12.3), which halves the work.
+ */
+import FFT from "fft.js";
+
+/** Transforms of one size. Holds its own buffers: make one for each worker or call, don't share it across awaits. */
+export interface RealTransform {
+	/** Samples; a power of two, at least 4. */
+	readonly size: number;
+	/** Spectrum of `input` (size samples): bins 0 … size/2, interleaved re, im, into `out` (size + 2 values). */
+	forward(input: Float64Array | Float32Array, out: Float64Array): void;
+	/** The signal (size samples) of a spectrum as `forward` writes it, into `out`. */
+	inverse(spectrum: Float64Array, out: Float64Array | Float32Array): void;
+}
+
+/** @param size samples, a power of two, at least 4 */
+export function createRealTransform(size: number): RealTransform {
+	const half = size / 2;
+	const fft = new FFT(half);
+	const packed = new Float64Array(size);
+	const turned = new Float64Array(size);
+	// cos and sin of 2πk/size
+	const cosines = Float64Array.from({ length: half + 1 }, (_, k) => Math.cos((2 * Math.PI * k) / size));
+	const sines = Float64Array.from({ length: half + 1 }, (_, k) => Math.sin((2 * Math.PI * k) / size));
+	const forward = (input: Float64Array | Float32Array, out: Float64Array): void => {
+		for (let i = 0; i < size; i++) packed[i] = input[i];
+		fft.transform(turned, packed);
+		for (let k = 0; k <= half; k++) {
+			const a = k === half ? 0 : 2 * k;
+			const b = k === 0 ? 0 : 2 * (half - k);
+			const evenRe = (turned[a] + turned[b]) / 2;
+			const evenIm = (turned[a + 1] - turned[b + 1]) / 2;
+			const oddRe = (turned[a + 1] + turned[b + 1]) / 2;
+			const oddIm = (turned[b] - turned[a]) / 2;
+			out[2 * k] = evenRe + oddRe * cosines[k] + oddIm * sines[k];
+			out[2 * k + 1] = evenIm + oddIm * cosines[k] - oddRe * sines[k];
+		}
+	};
+	const inverse = (spectrum: Float64Array, out: Float64Array | Float32Array): void => {
+		for (let k = 0; k < half; k++) {
+			const a = 2 * k;
+			const b = 2 * (half - k);
+			const evenRe = (spectrum[a] + spectrum[b]) / 2;
+			const evenIm = (spectrum[a + 1] - spectrum[b + 1]) / 2;
+			const turnRe = (spectrum[a] - spectrum[b]) / 2;
+			const turnIm = (spectrum[a + 1] + spectrum[b + 1]) / 2;
+			const oddRe = turnRe * cosines[k] - turnIm * sines[k];
+			const oddIm = turnRe * sines[k] + turnIm * cosines[k];
+			packed[a] = evenRe - oddIm;
+			packed[a + 1] = evenIm + oddRe;
+		}
+		fft.inverseTransform(turned, packed);
+		for (let i = 0; i < size; i++) out[i] = turned[i];
+	};
+	return { size, forward, inverse };
+}
+
+/** Hann window, periodic: value i is ½ − ½ cos(2πi/size). */
+export function hannWindow(size: number): Float64Array {
+	return Float64Array.from({ length: size }, (_, i) => 0.5 - 0.5 * Math.cos((2 * Math.PI * i) / size));
+}
+
+/**
+ * Magnitudes of Hann-windowed frames.
+ * @param size samples of a frame, a power of two
+ * @returns a function that writes the size/2 + 1 magnitudes of the frame centred on sample `centre` into `out`; the
+ * signal is zero outside its ends. A sine of amplitude a gives a at its bin: |X| · 2 / sum of window.
+ */
+export function createFrameSpectrum(
+	size: number,
+): (signal: Float32Array, centre: number, out: Float32Array | Float64Array) => void {
+	const transform = createRealTransform(size);
+	const window = hannWindow(size);
+	const scale = 2 / window.reduce((sum, w) => sum + w, 0);
+	const frame = new Float64Array(size);
+	const spectrum = new Float64Array(size + 2);
+	return (signal, centre, out) => {
+		const from = centre - size / 2;
+		for (let i = 0; i < size; i++) {
+			const at = from + i;
+			frame[i] = at >= 0 && at < signal.length ? signal[at] * window[i] : 0;
+		}
+		transform.forward(frame, spectrum);
+		for (let k = 0; k <= size / 2; k++) {
+			const re = spectrum[2 * k];
+			const im = spectrum[2 * k + 1];
+			out[k] = Math.sqrt(re * re + im * im) * scale;
+		}
+	};
+}
