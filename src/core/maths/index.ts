@@ -1,3 +1,2 @@
-export { resample, resampleMix } from "./resample.ts";
 export { createRandom, type SeededRandom } from "./seeded-random.ts";
-export { createFrameSpectrum, createRealTransform, hannWindow, type RealTransform } from "./spectrum.ts";
+export { createSha256, type Sha256, sha256Hex } from "./sha256.ts";

@@ -1,0 +1,35 @@
+export { applyEdit, type DraftShow, type EditResult, patchShow } from "./apply-edit.ts";
+export {
+	addCue,
+	type CueChange,
+	changeCue,
+	copyCues,
+	moveCue,
+	moveCues,
+	type NewCue,
+	removeCues,
+	renumberCue,
+	setCues,
+} from "./cue-edits.ts";
+export {
+	removeDroneGroup,
+	setDroneGroup,
+	setFleet,
+	setLimits,
+	setNotes,
+	setOpening,
+	setSoundtrack,
+	setTakeoff,
+	setTitle,
+	setVenue,
+} from "./document-edits.ts";
+export { addFormation, changeFormation, copyFormation, type NewFormation, removeFormation } from "./formation-edits.ts";
+export { doubleBeats, halveBeats, moveBeat, setGrid, setMetre, shiftBars, shiftBeats } from "./grid-edits.ts";
+export {
+	joinSections,
+	moveSectionStart,
+	renameSection,
+	setSectionLetter,
+	setSections,
+	splitSection,
+} from "./section-edits.ts";
