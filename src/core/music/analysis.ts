@@ -62,3 +62,11 @@ export interface Analysis {
 	/** What the user should know: "no beat was found: the music is silent". */
 	readonly notes: readonly string[];
 }
+
+/** What the analysis listens to: decoded audio, of which it needs no more than this. */
+export interface Sound {
+	/** Hz. */
+	readonly sampleRate: number;
+	/** One array a channel, −1..1, all of the same length. */
+	readonly channels: readonly Float32Array[];
+}

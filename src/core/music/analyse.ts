@@ -1,0 +1,133 @@
+/** Samples → everything the tool hears in a soundtrack. */
+import { resampleMix } from "../maths/index.ts";
+import { StarstaveError } from "../units/index.ts";
+import type { Analysis, MusicSection, Sound } from "./analysis.ts";
+import { HEARING_RATE, hearBands } from "./bands.ts";
+import { walkBars } from "./bar-pointer.ts";
+import { drawCurves, drawPeaks } from "./curves.ts";
+import { fluxActivation } from "./flux.ts";
+import { type Loudness, measureLoudness, SILENCE } from "./loudness.ts";
+import { findMoments } from "./moments.ts";
+import { type PlacedBeats, placeBeats } from "./place-beats.ts";
+
+/** Rises whenever the same samples would give another answer. */
+export const ANALYSIS_VERSION = 1;
+
+/** LU below the integrated loudness (and LUFS at all) under which there is nothing to beat time to. */
+const QUIET = -35;
+/** Confidence below which beats are given only with a word of caution, and none at all. */
+const DOUBTFUL = 0.25;
+const NO_BEAT = 0.06;
+
+export interface AnalyseOptions {
+	/** Called with 0..1 and what is being done, at least twenty times a track. */
+	readonly onProgress?: (share: number, stage: string) => void;
+	/** How fine the sections are, 0 (coarse) to 1 (fine); ½ unless told. */
+	readonly detail?: number;
+}
+
+/**
+ * Listens to a whole soundtrack: beats, bars, sections, loudness, curves, moments.
+ * The same samples give the same answer anywhere.
+ * @throws StarstaveError where there are no samples
+ */
+export function analyse(sound: Sound, options: AnalyseOptions = {}): Analysis {
+	const { channels, sampleRate } = sound;
+	const length = channels[0]?.length ?? 0;
+	if (length === 0 || !(sampleRate > 0)) {
+		throw new StarstaveError("soundtrack", "The soundtrack holds no samples, so there is nothing to analyse.");
+	}
+	const tell = options.onProgress ?? (() => {});
+	const within = (from: number, to: number, stage: string) => (share: number) =>
+		tell(from + (to - from) * share, stage);
+
+	tell(0, "loudness");
+	const loudness = measureLoudness(channels, sampleRate);
+	const peaks = drawPeaks(channels, sampleRate);
+	tell(0.15, "listening");
+	const mono = hearMono(channels, sampleRate);
+	const bands = hearBands(mono, within(0.25, 0.5, "listening"));
+	const activation = fluxActivation(bands);
+	tell(0.5, "beats");
+	const walk = walkBars(activation, within(0.5, 0.9, "beats"));
+	const notes: string[] = [];
+	const placed = judge(placeBeats(activation, walk, soundingNear(loudness)), loudness, notes);
+	tell(0.9, "sections");
+	const curves = drawCurves(bands, loudness);
+	const sections = findSections(placed);
+	const momentary = { values: loudness.momentary, rate: loudness.rate };
+	const moments = findMoments(placed.beats, placed.bars, momentary, curves);
+	tell(1, "done");
+	return {
+		version: ANALYSIS_VERSION,
+		duration: length / sampleRate,
+		sampleRate,
+		channels: channels.length,
+		tempo: { bpm: tempoOf(placed.beats) },
+		beats: placed.beats,
+		beatConfidence: placed.confidence,
+		bars: placed.bars,
+		sections,
+		moments,
+		confidence: meanOf(placed.confidence),
+		loudness,
+		curves,
+		peaks,
+		notes,
+	};
+}
+
+const meanOf = (values: Float32Array): number =>
+	values.length === 0 ? 0 : values.reduce((sum, x) => sum + x, 0) / values.length;
+
+/** Channels that cancel in their mean (opposite phase) are heard by the louder one. */
+function hearMono(channels: readonly Float32Array[], sampleRate: number): Float32Array {
+	const mono = resampleMix(channels, sampleRate, HEARING_RATE);
+	if (channels.length < 2) return mono;
+	const energy = (signal: Float32Array): number => signal.reduce((sum, x) => sum + x * x, 0) / signal.length;
+	const energies = channels.map(energy);
+	const loudest = energies.indexOf(Math.max(...energies));
+	if (energy(mono) >= (0.02 * energies[loudest]) / channels.length) return mono;
+	return resampleMix([channels[loudest]], sampleRate, HEARING_RATE);
+}
+
+/** Whether anything sounds within a second of a time. */
+function soundingNear(loudness: Loudness): (time: number) => boolean {
+	const gate = Math.max(-70, loudness.integrated + QUIET);
+	const { momentary, rate } = loudness;
+	return (time) => {
+		const last = Math.min(momentary.length - 1, Math.round((time + 1) * rate));
+		for (let i = Math.max(0, Math.round((time - 0.5) * rate)); i <= last; i++) if (momentary[i] > gate) return true;
+		return false;
+	};
+}
+
+/** Says honestly how far the beats can be trusted, and gives none where they can't be. */
+function judge(placed: PlacedBeats, loudness: Loudness, notes: string[]): PlacedBeats {
+	const none: PlacedBeats = { beats: new Float64Array(0), confidence: new Float32Array(0), bars: [] };
+	if (loudness.momentary.every((x) => x <= Math.max(-70, SILENCE))) {
+		notes.push("No beat was found: the soundtrack is silent.");
+		return none;
+	}
+	const confidence = meanOf(placed.confidence);
+	if (placed.beats.length < 4 || confidence < NO_BEAT) {
+		notes.push("No beat was found: nothing in the sound keeps time.");
+		return none;
+	}
+	if (confidence < DOUBTFUL) notes.push("The beat is uncertain: listen to it with the click before placing cues.");
+	return placed;
+}
+
+/** Beats a minute: the median of the intervals, 0 without beats. */
+function tempoOf(beats: Float64Array): number {
+	if (beats.length < 2) return 0;
+	const intervals = beats.slice(1).map((time, i) => time - beats[i]);
+	intervals.sort();
+	return 60 / intervals[Math.floor(intervals.length / 2)];
+}
+
+function findSections(placed: PlacedBeats): MusicSection[] {
+	const count = placed.beats.length;
+	if (count === 0) return [];
+	return [{ start: placed.beats[0], end: placed.beats[count - 1], fromBeat: 0, toBeat: count, letter: "A" }];
+}
