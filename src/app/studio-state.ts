@@ -2,6 +2,7 @@ import type { ShowCheck, ShowFlight } from "../core/flight/index.ts";
 import type { LightProgram } from "../core/light/index.ts";
 import type { Analysis } from "../core/music/index.ts";
 import type { FleetSlots, Show } from "../core/show/index.ts";
+import type { PlayerState } from "../platform/player.ts";
 
 /** Work under way that takes longer than a blink. */
 export interface Job {
@@ -29,6 +30,8 @@ export type Selection =
 
 /** Everything the screens show. Typed arrays (plans, peaks, curves) are held by reference and never patched. */
 export interface StudioState {
+	/** False until the autosave has been looked at: nothing is shown before. */
+	readonly started: boolean;
 	readonly show: Show | null;
 	/** Why edits are refused: another tab has this show, or it is newer than this program. Null: edits are taken. */
 	readonly readOnly: string | null;
@@ -36,16 +39,24 @@ export interface StudioState {
 	readonly fileName: string | null;
 	/** True when there are edits that no file holds yet (the autosave holds them always). */
 	readonly unsaved: boolean;
+	/** Title of the show that stood here before the last one was opened; it can be brought back. */
+	readonly previous: string | null;
 	/** The soundtrack's bytes are here and decoded, so it can be played. */
 	readonly audioReady: boolean;
+	/** What the user should know about the soundtrack: "8 kHz, so nothing above 4 kHz is heard". */
+	readonly soundNotes: readonly string[];
 	readonly analysis: Analysis | null;
 	/** Follow from the show; recomputed after each edit. Null until first computed or where it can't be. */
 	readonly slots: ReadonlyMap<string, FleetSlots> | null;
+	/** 3·N metres on the take-off grid. */
+	readonly ground: Float64Array | null;
 	readonly light: LightProgram | null;
 	readonly flight: ShowFlight | null;
 	readonly check: ShowCheck | null;
 	/** Ids of transitions (and "launch", "landing") whose answer is older than the show. */
 	readonly unchecked: ReadonlySet<string>;
+	/** The part of playing that doesn't change with every frame; where the ear is, says `player.heardAt`. */
+	readonly playback: PlayerState;
 	readonly selection: Selection;
 	readonly jobs: readonly Job[];
 	readonly notices: readonly Notice[];

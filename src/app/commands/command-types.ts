@@ -1,0 +1,142 @@
+import type { Remedy } from "../../core/flight/index.ts";
+import type {
+	CueChange,
+	DraftShow,
+	DroneGroup,
+	Fleet,
+	Limits,
+	NewCue,
+	NewFormation,
+	Section,
+	Takeoff,
+	Venue,
+} from "../../core/show/index.ts";
+import type { PlayRate } from "../../platform/player.ts";
+import type { Selection } from "../studio-state.ts";
+
+/**
+ * All that can be done, by theme. No command throws: what goes wrong becomes a notice, and the answer is false or null.
+ * Edits run at once and are one step of undo each; what takes longer is a promise and shows as a job.
+ */
+
+export interface ShowCommands {
+	/** An empty show for so many drones. */
+	newShow(drones: number): boolean;
+	/**
+	 * A soundtrack or a show, told by content. A soundtrack goes into the open show where that has none, or where it is
+	 * the very one that the show names; else it begins a new show. The show that stood here can be brought back.
+	 */
+	openFile(file: File): Promise<boolean>;
+	openDemo(): Promise<boolean>;
+	/** The show that stood here before the last one was opened. */
+	bringBackPrevious(): Promise<boolean>;
+	/** Cues and formations from the analysis, in place of those that are there; one step of undo. */
+	makeRoughCut(options: { readonly drones: number; readonly seed?: number }): Promise<boolean>;
+	/** Into the file that the show came from where the browser can, else as a download. */
+	save(options?: { readonly as?: boolean; readonly withSoundtrack?: boolean }): Promise<boolean>;
+	exportHandOff(options: HandOffChoice): Promise<boolean>;
+	/** Feasibility of the whole show again, everything new. */
+	checkAgain(): void;
+}
+
+/** What leaves for the crew. */
+export interface HandOffChoice {
+	/** Rows a second of flight paths, and of light. */
+	readonly rate?: number;
+	readonly lightRate?: number;
+	/** Everything but flight paths and light, for a show that can't be flown yet. */
+	readonly draft?: boolean;
+	readonly timecode?: { readonly rate?: "24" | "25" | "29.97df" | "30"; readonly start?: string };
+}
+
+export interface CueCommands {
+	/** @returns the new cue's id, which is then selected; null where it was refused */
+	addCue(cue: NewCue): string | null;
+	changeCue(id: string, change: CueChange): boolean;
+	/** Likewise for many at once. */
+	changeCues(ids: readonly string[], change: CueChange): boolean;
+	moveCue(id: string, at: number): boolean;
+	/** By so many beats. */
+	moveCues(ids: readonly string[], beats: number): boolean;
+	renumberCue(id: string, number: string): boolean;
+	copyCues(ids: readonly string[], at: number): readonly string[] | null;
+	removeCues(ids: readonly string[]): boolean;
+	applyRemedy(remedy: Remedy): boolean;
+}
+
+export interface FormationCommands {
+	addFormation(formation: NewFormation): string | null;
+	changeFormation(id: string, change: Partial<Omit<NewFormation, "id">>): boolean;
+	copyFormation(id: string): string | null;
+	removeFormation(id: string): boolean;
+	setOpening(id: string | null): boolean;
+	/** An SVG drawing, or points as CSV, becomes a formation. */
+	addFormationFrom(file: File): Promise<string | null>;
+}
+
+export interface DocumentCommands {
+	setTitle(title: string): boolean;
+	setNotes(notes: string): boolean;
+	setFleet(change: Partial<Omit<Fleet, "limits">>): boolean;
+	setLimits(change: Partial<Limits>): boolean;
+	setVenue(change: Partial<Venue>): boolean;
+	setTakeoff(takeoff: Takeoff | null): boolean;
+	setDroneGroup(group: DroneGroup): boolean;
+	removeDroneGroup(id: string): boolean;
+}
+
+export interface GridCommands {
+	/** Every beat so many seconds later. */
+	shiftBeats(seconds: number): boolean;
+	/** Bars begin so many beats later. */
+	shiftBars(beats: number): boolean;
+	/** This beat becomes the first of its bar, the others follow its metre. */
+	setDownbeat(beat: number): boolean;
+	doubleBeats(): boolean;
+	halveBeats(): boolean;
+	moveBeat(beat: number, seconds: number): boolean;
+	setMetre(fromBeat: number, beatsPerBar: number, until?: number): boolean;
+	/** The grid and sections as the analysis heard them. */
+	takeAnalysedGrid(): boolean;
+	setSections(sections: readonly Section[]): boolean;
+	renameSection(id: string, name: string): boolean;
+	setSectionLetter(id: string, letter: string): boolean;
+	moveSectionStart(id: string, beat: number): boolean;
+	splitSection(id: string, beat: number): string | null;
+	joinSections(id: string): boolean;
+}
+
+export interface DeskCommands {
+	select(selection: Selection): void;
+	/** Takes a cue into the selection or out of it. */
+	selectCue(id: string, add?: boolean): void;
+	undo(): boolean;
+	redo(): boolean;
+	dismissNotice(id: string): void;
+	cancelJob(id: string): void;
+	play(): Promise<void>;
+	pause(): void;
+	/** Seconds. */
+	seek(seconds: number): void;
+	setRate(rate: PlayRate): void;
+	setLoop(loop: { readonly from: number; readonly to: number } | null): void;
+	setClick(on: boolean): void;
+}
+
+export type Commands = ShowCommands & CueCommands & FormationCommands & DocumentCommands & GridCommands & DeskCommands;
+
+/** One drag, one step of undo. Each update starts from the show as it was when the drag began. */
+export interface Drag {
+	/** @returns why it stops here, for the user; null where it doesn't. The show then stays as the last update left it. */
+	update(edit: (draft: DraftShow) => unknown): string | null;
+	commit(): void;
+	cancel(): void;
+}
+
+/** A drag of one cue by its whole, or of a transition by an end; it stops at its neighbours and says why. */
+export interface CueDrag {
+	/** @param beats where the edge is taken to; for a whole cue, how far it is moved */
+	update(beats: number): string | null;
+	commit(): void;
+	cancel(): void;
+}

@@ -1,0 +1,3 @@
+export type { Commands, CueDrag, Drag, HandOffChoice } from "./commands/command-types.ts";
+export type { Studio } from "./studio.ts";
+export type { Job, Notice, Selection, StudioState } from "./studio-state.ts";
