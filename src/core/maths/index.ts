@@ -3,4 +3,3 @@ export { createRandom, type SeededRandom } from "./seeded-random.ts";
 export { createSha256, type Sha256, sha256Hex } from "./sha256.ts";
 export { pairsWithin, type SmallestGap, smallestGap } from "./spatial-gap.ts";
 export { createFrameSpectrum, createRealTransform, hannWindow, type RealTransform } from "./spectrum.ts";
-export { pairsWithin, type SmallestGap, smallestGap } from "./spatial-gap.ts";
