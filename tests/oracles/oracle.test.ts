@@ -76,7 +76,9 @@ describe("the oracle of flight paths can fail", () => {
 		expect(read(good).drones).toBe(2);
 		expect(() => read(header + row(1, "0.000000") + row(1, "0.100000") + row(2, "0.000000"))).toThrow(/unequal/);
 		expect(() => read(header + row(1, "0.000000") + row(1, "0.200000"))).toThrow(/is followed by/);
-		expect(() => read(header + row(1, "0.050000"))).toThrow(/no multiple/);
+		expect(() => read(header + row(1, "0.100000"))).toThrow(/its name says 0/);
+		const odd = { "positions-launch-0000.csv": text(header + row(1, "-0.050000")) };
+		expect(() => readTable(odd, "positions", 10)).toThrow(/no multiple/);
 		expect(() => read(row(1, "0.000000"))).toThrow(/header/);
 		expect(() => read(header + row(1, "0.000000", "1.0"))).toThrow(/another form/);
 		expect(() => readTable({ "positions-0030.csv": text(good) }, "positions", 10)).toThrow(/multiple of 60/);
