@@ -46,7 +46,7 @@ export interface HandOffChoice {
 	readonly lightRate?: number;
 	/** Everything but flight paths and light, for a show that can't be flown yet. */
 	readonly draft?: boolean;
-	readonly timecode?: { readonly rate?: "24" | "25" | "29.97df" | "30"; readonly start?: string };
+	readonly timecode?: { readonly rate?: "24" | "25" | "29.97" | "30"; readonly start?: string };
 }
 
 export interface CueCommands {

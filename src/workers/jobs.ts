@@ -1,0 +1,139 @@
+import type { Samples } from "../core/decode/index.ts";
+import type { RoughCut, RoughCutOptions } from "../core/draft/index.ts";
+import type { LegProblem, Plan, ShowCheck, ShowFlight } from "../core/flight/index.ts";
+import type { HandOffOptions } from "../core/handoff/index.ts";
+import type { Analysis } from "../core/music/index.ts";
+import type { Curve, FleetSlots, Show, Soundtrack } from "../core/show/index.ts";
+
+/**
+ * Everything that runs in a worker, each a plain call into the core: the same functions run on the command line and in
+ * tests. Asks and answers are plain data and typed arrays. Each job fetches its part of the core when it is first asked
+ * for, so that a worker that only plans never loads a decoder.
+ */
+export type Report = (share: number | null, stage: string) => void;
+
+export interface AnalyseAsk {
+	/** Base name of the file. */
+	readonly name: string;
+	readonly bytes: Uint8Array;
+	/** Decoded already (what only a browser decodes); else null. */
+	readonly samples: Samples | null;
+	/** An analysis that was kept, of the soundtrack with this hash; null: listen anew. */
+	readonly known: { readonly sha256: string; readonly analysis: Analysis } | null;
+}
+
+export interface AnalyseAnswer {
+	readonly soundtrack: Soundtrack;
+	readonly samples: Samples;
+	readonly analysis: Analysis;
+}
+
+async function analyse(ask: AnalyseAsk, report: Report): Promise<AnalyseAnswer> {
+	const [{ decodeAudio }, { ANALYSIS_VERSION, analyse }, { sha256Hex }] = await Promise.all([
+		import("../core/decode/index.ts"),
+		import("../core/music/index.ts"),
+		import("../core/maths/index.ts"),
+	]);
+	report(null, "decoding");
+	const samples = ask.samples ?? (await decodeAudio(ask.bytes, ask.name));
+	const sha256 = sha256Hex(ask.bytes);
+	const { sampleRate, channels } = samples;
+	const soundtrack: Soundtrack = {
+		file: ask.name,
+		sha256,
+		duration: channels[0].length / sampleRate,
+		sampleRate,
+		channels: channels.length,
+	};
+	const known =
+		ask.known?.sha256 === sha256 && ask.known.analysis.version === ANALYSIS_VERSION ? ask.known.analysis : null;
+	return { soundtrack, samples, analysis: known ?? analyse(samples, { onProgress: report }) };
+}
+
+export interface LayAnswer {
+	readonly slots: Map<string, FleetSlots>;
+	readonly ground: Float64Array;
+	readonly problems: LegProblem[];
+}
+
+/** Slots of every formation, the take-off grid, and the legs that have to be planned. */
+async function lay({ show }: { readonly show: Show }): Promise<LayAnswer> {
+	const [{ fleetSlotsOf, takeoffSlots }, { legProblems }] = await Promise.all([
+		import("../core/formation/index.ts"),
+		import("../core/flight/index.ts"),
+	]);
+	const slots = fleetSlotsOf(show);
+	const ground = takeoffSlots(show);
+	return { slots, ground, problems: legProblems(show, slots, ground) };
+}
+
+async function plan({ problem }: { readonly problem: LegProblem }, report: Report): Promise<Plan> {
+	const { planLeg } = await import("../core/flight/index.ts");
+	return planLeg(problem, report);
+}
+
+export interface CheckAsk {
+	readonly show: Show;
+	readonly slots: ReadonlyMap<string, FleetSlots>;
+	readonly flight: ShowFlight;
+	readonly ground: Float64Array;
+	readonly plans: ReadonlyMap<string, Plan>;
+}
+
+async function check({ show, slots, flight, plans }: CheckAsk): Promise<ShowCheck> {
+	const { checkShow } = await import("../core/flight/index.ts");
+	return checkShow(show, new Map(slots), flight, new Map(plans));
+}
+
+export interface DraftAsk {
+	readonly analysis: Analysis;
+	readonly soundtrack: Soundtrack;
+	readonly options: RoughCutOptions;
+}
+
+async function draft({ analysis, soundtrack, options }: DraftAsk, report: Report): Promise<RoughCut> {
+	const { roughCut } = await import("../core/draft/index.ts");
+	return roughCut(analysis, soundtrack, options, report);
+}
+
+export interface HandOffAsk {
+	readonly show: Show;
+	readonly slots: ReadonlyMap<string, FleetSlots>;
+	readonly ground: Float64Array;
+	readonly flight: ShowFlight;
+	readonly check: ShowCheck;
+	readonly curves: readonly Curve[];
+	readonly options: HandOffOptions;
+}
+
+export interface HandOffAnswer {
+	/** The whole hand-off as one zip. */
+	readonly zip: Uint8Array;
+	readonly files: readonly string[];
+	readonly revision: string;
+	readonly notes: readonly string[];
+}
+
+async function handoff(ask: HandOffAsk, report: Report): Promise<HandOffAnswer> {
+	const [{ handOff }, { compileLight }, { zipSync }] = await Promise.all([
+		import("../core/handoff/index.ts"),
+		import("../core/light/index.ts"),
+		import("fflate"),
+	]);
+	const slots = new Map(ask.slots);
+	const light = compileLight(ask.show, ask.flight.stays, slots, ask.curves);
+	const { files, revision, notes } = handOff({ ...ask, slots, light }, ask.options, report);
+	const zip = zipSync(Object.fromEntries(files.map(({ name, bytes }) => [name, bytes])), {
+		// The flight paths are a zip already; the rest is small.
+		level: 6,
+		// Zip has no times before 1980; a fixed one lets equal shows give equal bytes.
+		mtime: "1980-01-01T00:00:00",
+	});
+	return { zip, files: files.map(({ name }) => name), revision, notes };
+}
+
+export const jobs = { analyse, lay, plan, check, draft, handoff };
+
+export type JobKind = keyof typeof jobs;
+export type JobAsk<K extends JobKind> = Parameters<(typeof jobs)[K]>[0];
+export type JobAnswer<K extends JobKind> = Awaited<ReturnType<(typeof jobs)[K]>>;
