@@ -1,0 +1,83 @@
+import { useEffect, useMemo, useRef, useState } from "react";
+import { useStore } from "zustand";
+import { listActions } from "./actions.ts";
+import { CommandFinder } from "./CommandFinder.tsx";
+import { desk } from "./desk.ts";
+import { EmptyDesk } from "./EmptyDesk.tsx";
+import { KeysList } from "./KeysList.tsx";
+import { attachKeyboard } from "./keyboard.ts";
+import { Masthead } from "./Masthead.tsx";
+import { Margin } from "./margin/Margin.tsx";
+import { NightPane } from "./NightPane.tsx";
+import { Notices } from "./Notices.tsx";
+import { RoughCutQuestion } from "./RoughCutQuestion.tsx";
+import { StavesPane } from "./StavesPane.tsx";
+import { useStudio, useStudioState } from "./studio-context.ts";
+import { TransportBar } from "./TransportBar.tsx";
+import { useFrameLoop } from "./use-frame.ts";
+
+/** The open spread: the music on the left-hand page, the sky and the margin on the right. */
+export function Spread() {
+	const studio = useStudio();
+	const loop = useFrameLoop();
+	const file = useRef<HTMLInputElement>(null);
+	const [dropping, setDropping] = useState(false);
+	const started = useStudioState((state) => state.started);
+	const hasShow = useStudioState((state) => state.show !== null);
+	const readOnly = useStudioState((state) => state.readOnly);
+	const strip = useStore(desk, (state) => state.strip !== null);
+	const actions = useMemo(() => listActions({ studio, loop, chooseFile: () => file.current?.click() }), [studio, loop]);
+	useEffect(() => attachKeyboard(actions), [actions]);
+
+	return (
+		<main
+			className={strip ? "spread strip" : "spread"}
+			onDragOver={(event) => {
+				event.preventDefault();
+				setDropping(true);
+			}}
+			onDragLeave={(event) => {
+				if (!event.currentTarget.contains(event.relatedTarget as Node | null)) setDropping(false);
+			}}
+			onDrop={(event) => {
+				event.preventDefault();
+				setDropping(false);
+				const dropped = event.dataTransfer.files[0];
+				if (dropped) void studio.commands.openFile(dropped);
+			}}
+		>
+			<input
+				ref={file}
+				type="file"
+				className="unseen"
+				tabIndex={-1}
+				aria-label="Open a soundtrack or a show"
+				accept="audio/*,.wav,.mp3,.flac,.ogg,.opus,.m4a,.aac,.json,.starstave"
+				onChange={(event) => {
+					const chosen = event.target.files?.[0];
+					if (chosen) void studio.commands.openFile(chosen);
+					event.target.value = "";
+				}}
+			/>
+			<section className="left" aria-label="Music">
+				<Masthead actions={actions} />
+				{readOnly !== null && (
+					<p className="band" role="status">
+						{readOnly}
+					</p>
+				)}
+				{hasShow && <TransportBar />}
+				{hasShow ? <StavesPane /> : started && <EmptyDesk choose={() => file.current?.click()} />}
+			</section>
+			<div className="right">
+				<NightPane />
+				<Margin />
+			</div>
+			<Notices />
+			<RoughCutQuestion />
+			<CommandFinder actions={actions} />
+			<KeysList actions={actions} />
+			{dropping && <div className="drop-veil">Let go to open the soundtrack or show</div>}
+		</main>
+	);
+}

@@ -1,0 +1,87 @@
+import { useCallback, useEffect, useMemo, useRef } from "react";
+import { useStore } from "zustand";
+import type { CueDrag } from "../app/index.ts";
+import { createStaves, type Staves } from "../staves/index.ts";
+import { desk } from "./desk.ts";
+import { useStudio, useStudioState } from "./studio-context.ts";
+import { useBeatMap, useFrame, useFrameLoop } from "./use-frame.ts";
+import { followStrip, zoomStrip } from "./zoom-strip.ts";
+
+/** The staves: hands them what they draw, and their wishes to the commands. */
+export function StavesPane() {
+	const studio = useStudio();
+	const loop = useFrameLoop();
+	const host = useRef<HTMLElement>(null);
+	const staves = useRef<Staves | null>(null);
+	const show = useStudioState((state) => state.show);
+	const analysis = useStudioState((state) => state.analysis);
+	const check = useStudioState((state) => state.check);
+	const unchecked = useStudioState((state) => state.unchecked);
+	const selection = useStudioState((state) => state.selection);
+	const strip = useStore(desk, (state) => state.strip);
+	const beatMap = useBeatMap();
+	const checks = useMemo(() => new Map((check?.transitions ?? []).map((one) => [one.id, one])), [check]);
+
+	useEffect(() => {
+		if (!host.current) return;
+		let drag: CueDrag | null = null;
+		const { commands } = studio;
+		const made = createStaves(host.current, {
+			seek: (seconds) => commands.seek(seconds),
+			selectCue: (id, add) => {
+				if (id === null) commands.select({ kind: "nothing" });
+				else commands.selectCue(id, add);
+				desk.setState({ margin: "detail" });
+			},
+			selectSection: (id) => {
+				commands.select({ kind: "section", id });
+				desk.setState({ margin: "detail" });
+			},
+			beginDrag: (id, part) => {
+				drag = studio.dragCue(id, part);
+				return drag !== null;
+			},
+			drag: (beats) => drag?.update(beats) ?? null,
+			endDrag: (keep) => {
+				if (keep) drag?.commit();
+				else drag?.cancel();
+				drag = null;
+			},
+			zoom: (factor, about) => zoomStrip({ studio, loop }, factor, about),
+		});
+		staves.current = made;
+		const sizes = new ResizeObserver(() => made.resize());
+		sizes.observe(host.current);
+		return () => {
+			sizes.disconnect();
+			made.destroy();
+			staves.current = null;
+		};
+	}, [studio, loop]);
+
+	useEffect(() => {
+		if (!show) return;
+		staves.current?.show({
+			show,
+			analysis,
+			checks,
+			unchecked,
+			selectedCues: new Set(selection.kind === "cues" ? selection.ids : []),
+			selectedSection: selection.kind === "section" ? selection.id : null,
+			strip,
+		});
+	}, [show, analysis, checks, unchecked, selection, strip]);
+
+	const follow = useCallback(
+		(seconds: number, moved: boolean) => {
+			if (!moved) return;
+			staves.current?.setPlayhead(seconds);
+			const position = beatMap.positionAt(seconds);
+			followStrip(position);
+			if (studio.store.getState().playback.playing) staves.current?.reveal(position);
+		},
+		[beatMap, studio],
+	);
+	useFrame(follow);
+	return <section ref={host} className="staves" aria-label="Staves: the music with its cues" />;
+}

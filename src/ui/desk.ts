@@ -1,0 +1,28 @@
+import { createStore } from "zustand/vanilla";
+import type { NightViewpoint } from "../night/index.ts";
+
+/** Which page of the margin is open. */
+export type MarginPage = "detail" | "verdicts" | "formations" | "fleet-venue" | "hand-off";
+
+/** What only the screens know: where one looks, not what the show is. */
+export interface Desk {
+	readonly margin: MarginPage;
+	readonly viewpoint: NightViewpoint;
+	readonly showUnlit: boolean;
+	/** Null: page view; else the strip's window in beats. */
+	readonly strip: { readonly from: number; readonly to: number } | null;
+	readonly finder: boolean;
+	/** The rough cut's question is open. */
+	readonly asksRoughCut: boolean;
+	readonly keysShown: boolean;
+}
+
+export const desk = createStore<Desk>(() => ({
+	margin: "detail",
+	viewpoint: "audience",
+	showUnlit: true,
+	strip: null,
+	finder: false,
+	asksRoughCut: false,
+	keysShown: false,
+}));

@@ -1,0 +1,1 @@
+export { mountUi } from "./mount-ui.tsx";

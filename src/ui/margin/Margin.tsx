@@ -1,0 +1,63 @@
+import { useStore } from "zustand";
+import { desk, type MarginPage } from "../desk.ts";
+import { useStudioState } from "../studio-context.ts";
+import { Detail } from "./Detail.tsx";
+import { FleetVenue } from "./FleetVenue.tsx";
+import { Formations } from "./Formations.tsx";
+import { HandOff } from "./HandOff.tsx";
+import { Verdicts } from "./Verdicts.tsx";
+
+const PAGES: readonly { readonly page: MarginPage; readonly name: string }[] = [
+	{ page: "detail", name: "Detail" },
+	{ page: "verdicts", name: "Verdicts" },
+	{ page: "formations", name: "Formations" },
+	{ page: "fleet-venue", name: "Fleet & venue" },
+	{ page: "hand-off", name: "Hand-off" },
+];
+
+/** The note in the margin: what is selected, or one of the pages about the whole show. */
+export function Margin() {
+	const page = useStore(desk, (state) => state.margin);
+	const hasShow = useStudioState((state) => state.show !== null);
+	if (!hasShow) {
+		return (
+			<aside className="margin" aria-label="Margin">
+				<Cautions />
+			</aside>
+		);
+	}
+	return (
+		<aside className="margin" aria-label="Margin">
+			<nav className="margin-pages" aria-label="Pages of the margin">
+				{PAGES.map((one) => (
+					<button
+						key={one.page}
+						type="button"
+						className="plain"
+						aria-current={one.page === page ? "page" : undefined}
+						onClick={() => desk.setState({ margin: one.page })}
+					>
+						{one.name}
+					</button>
+				))}
+			</nav>
+			<div className="note">
+				{page === "detail" && <Detail />}
+				{page === "verdicts" && <Verdicts />}
+				{page === "formations" && <Formations />}
+				{page === "fleet-venue" && <FleetVenue />}
+				{page === "hand-off" && <HandOff />}
+			</div>
+		</aside>
+	);
+}
+
+/** What no screen of this program decides. */
+export function Cautions() {
+	return (
+		<p className="quiet small">
+			Starstave advises. Its proof covers the plan, not the air: spacing has to include position error, tracking and
+			wind. Go or no-go is the flight director's; local codes and licensed practice come first.
+		</p>
+	);
+}

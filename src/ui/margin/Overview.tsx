@@ -1,0 +1,82 @@
+import { desk } from "../desk.ts";
+import { TextField } from "../fields/Field.tsx";
+import { saySeconds, sayTime } from "../say-place.ts";
+import { useStudio, useStudioState } from "../studio-context.ts";
+import { Cautions } from "./Margin.tsx";
+
+/** Nothing is selected: how the show stands, and what to do next. */
+export function Overview() {
+	const { commands } = useStudio();
+	const show = useStudioState((state) => state.show);
+	const analysis = useStudioState((state) => state.analysis);
+	const soundNotes = useStudioState((state) => state.soundNotes);
+	const audioReady = useStudioState((state) => state.audioReady);
+	const check = useStudioState((state) => state.check);
+	const busy = useStudioState((state) => state.jobs.length > 0);
+	const readOnly = useStudioState((state) => state.readOnly !== null);
+	if (!show) return null;
+	const noCues = show.cues.order.length === 0;
+	return (
+		<>
+			<h2>The show</h2>
+			<p>
+				{show.fleet.count} {show.fleet.count === 1 ? "drone" : "drones"}, {show.formations.order.length} formations,{" "}
+				{show.cues.order.length} cues
+				{show.soundtrack ? `, ${sayTime(show.soundtrack.duration).replace(/\.\d+$/, "")} of music` : ", no music yet"}.
+				{analysis &&
+					analysis.beats.length > 1 &&
+					` About ${Math.round(analysis.tempo.bpm)} beats a minute, ${sayConfidence(analysis.confidence)}.`}
+				{check && ` In the air for ${saySeconds(check.endurance.airborne)} of ${saySeconds(check.endurance.limit)}.`}
+			</p>
+			{show.soundtrack && !audioReady && !busy && (
+				<p className="trouble">
+					The soundtrack {show.soundtrack.file} is not here: open it, and it is joined to this show.
+				</p>
+			)}
+			{[...soundNotes, ...(analysis?.notes ?? []), ...(check?.notes ?? [])].map((note) => (
+				<p key={note} className="quiet small">
+					{note}
+				</p>
+			))}
+			{noCues && analysis && (
+				<p>
+					Next: let Starstave make a rough cut from the music and work it over, or draw formations and put in cues by
+					hand.
+				</p>
+			)}
+			<div className="buttons">
+				{analysis && (
+					<button
+						type="button"
+						className={noCues ? "first" : ""}
+						disabled={readOnly || busy}
+						onClick={() => desk.setState({ asksRoughCut: true })}
+					>
+						Make a rough cut …
+					</button>
+				)}
+				<button type="button" onClick={() => desk.setState({ margin: "formations" })}>
+					Formations
+				</button>
+			</div>
+			<div className="fields">
+				<TextField label="title" value={show.title} disabled={readOnly} onSet={(title) => commands.setTitle(title)} />
+				<TextField
+					label="notes"
+					wide
+					value={show.notes}
+					disabled={readOnly}
+					onSet={(notes) => commands.setNotes(notes)}
+				/>
+			</div>
+			<Cautions />
+		</>
+	);
+}
+
+function sayConfidence(confidence: number): string {
+	if (confidence > 0.7) return "heard clearly";
+	return confidence > 0.35
+		? "heard fairly well: check the beats with the click track"
+		: "heard badly: set the beats by ear";
+}
