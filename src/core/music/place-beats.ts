@@ -1,7 +1,7 @@
 /** From a walk of the bar pointer to beats: moved onto the sound's own onsets, trimmed to the music, with confidence. */
 import type { Bar } from "../show/index.ts";
 import type { ActivationCurves } from "./analysis.ts";
-import type { BarWalk } from "./bar-pointer.ts";
+import type { BarWalk } from "./follow-beats.ts";
 
 /** Seconds that a beat may move to the activation's peak. */
 const SNAP = 0.045;
@@ -37,7 +37,7 @@ function peakNear(activation: ActivationCurves, time: number): { time: number; h
 }
 
 /**
- * @param walk the bar pointer's walk
+ * @param walk beats and bars as they were followed
  * @param isSounding whether there is anything to hear near a time: beats before the first sound and after the last go
  */
 export function placeBeats(
