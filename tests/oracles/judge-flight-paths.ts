@@ -112,6 +112,15 @@ export function judgeFlightPaths(table: ReadTable, limits: OracleLimits): Oracle
 		const { gapAt } = separation;
 		broken.push(`gap is ${separation.gap} at ${gapAt?.seconds} s between drones ${gapAt?.drones.map((i) => i + 1)}`);
 	}
+	// On the ground the pitch that the grid has at first may not shrink.
+	let pitch = limits.spacing;
+	for (let i = 0; i < drones; i++) {
+		for (let j = 0; j < i; j++)
+			pitch = Math.min(pitch, Math.hypot(at(0, i, 0) - at(0, j, 0), at(0, i, 1) - at(0, j, 1)));
+	}
+	if (separation.groundGap < pitch - ORACLE_TOLERANCE.gap) {
+		broken.push(`near the ground two drones come to ${separation.groundGap} m, under the grid's pitch of ${pitch} m`);
+	}
 	if (home > ORACLE_TOLERANCE.home) broken.push(`a drone ends ${home} m from where it began`);
 	return {
 		drones,
@@ -186,21 +195,39 @@ function judgeGaps(table: ReadTable, limits: OracleLimits): Pick<OracleVerdict, 
 			u[axis] = (values[from + 3 * i + axis] - values[from + 3 * j + axis]) * scale;
 			w[axis] = (values[to + 3 * i + axis] - values[to + 3 * j + axis]) * scale - u[axis];
 		}
-		const length = w[0] ** 2 + w[1] ** 2 + w[2] ** 2;
-		const share = length === 0 ? 0 : Math.min(1, Math.max(0, -(u[0] * w[0] + u[1] * w[1] + u[2] * w[2]) / length));
-		const distance = Math.hypot(u[0] + share * w[0], u[1] + share * w[1], u[2] + share * w[2]);
-		const height = (drone: number): number => {
-			const a = values[from + 3 * drone + 2];
-			return a + share * (values[to + 3 * drone + 2] - a);
-		};
+		const rise = (drone: number): readonly [number, number] => [
+			values[from + 3 * drone + 2],
+			values[to + 3 * drone + 2],
+		];
+		const [begin, end] = flownShare(rise(i), rise(j));
 		// On the ground, below 1 m, only the grid's own pitch counts.
-		if (height(i) < ORACLE_TOLERANCE.ground || height(j) < ORACLE_TOLERANCE.ground) {
-			groundGap = Math.min(groundGap, distance);
-			return;
-		}
+		if (begin > 0 || end < 1) groundGap = Math.min(groundGap, nearest(u, w, 0, 1).distance);
+		if (begin > end) return;
+		const { distance, share } = nearest(u, w, begin, end);
 		if (distance < gap) {
 			gap = distance;
 			gapAt = { seconds: times[row] + share * (times[row + 1] - times[row]), drones: [i, j] };
 		}
 	}
+}
+
+/** Smallest |u + s·w| for s in [begin, end]. */
+function nearest(u: readonly number[], w: readonly number[], begin: number, end: number) {
+	const length = w[0] ** 2 + w[1] ** 2 + w[2] ** 2;
+	const free = length === 0 ? begin : -(u[0] * w[0] + u[1] * w[1] + u[2] * w[2]) / length;
+	const share = Math.min(end, Math.max(begin, free));
+	return { share, distance: Math.hypot(u[0] + share * w[0], u[1] + share * w[1], u[2] + share * w[2]) };
+}
+
+/** The share of a piece in which both drones are above the ground, from their heights at its ends; begin > end: none. */
+function flownShare(...heights: readonly (readonly [number, number])[]): readonly [number, number] {
+	let begin = 0;
+	let end = 1;
+	for (const [low, high] of heights) {
+		const cross = (ORACLE_TOLERANCE.ground - low) / (high - low);
+		if (low < ORACLE_TOLERANCE.ground && high < ORACLE_TOLERANCE.ground) return [1, 0];
+		if (low < ORACLE_TOLERANCE.ground) begin = Math.max(begin, cross);
+		if (high < ORACLE_TOLERANCE.ground) end = Math.min(end, cross);
+	}
+	return [begin, end];
 }
