@@ -1,9 +1,9 @@
 import type { Samples } from "../core/decode/index.ts";
 import type { RoughCut, RoughCutOptions } from "../core/draft/index.ts";
 import type { LegProblem, Plan, ShowCheck, ShowFlight } from "../core/flight/index.ts";
-import type { HandOffOptions } from "../core/handoff/index.ts";
+import type { HandoffOptions } from "../core/handoff/index.ts";
 import type { Analysis } from "../core/music/index.ts";
-import type { Curve, FleetSlots, Show, Soundtrack } from "../core/show/index.ts";
+import type { Curve, FleetSlots, PackedShow, Show, Soundtrack } from "../core/show/index.ts";
 
 /**
  * Everything that runs in a worker, each a plain call into the core: the same functions run on the command line and in
@@ -99,18 +99,18 @@ async function draft({ analysis, soundtrack, options }: DraftAsk, report: Report
 export interface HandOffAsk {
 	readonly show: Show;
 	readonly slots: ReadonlyMap<string, FleetSlots>;
-	readonly ground: Float64Array;
 	readonly flight: ShowFlight;
 	readonly check: ShowCheck;
 	readonly curves: readonly Curve[];
-	readonly options: HandOffOptions;
+	readonly options: HandoffOptions;
 }
 
 export interface HandOffAnswer {
-	/** The whole hand-off as one zip. */
-	readonly zip: Uint8Array;
-	readonly files: readonly string[];
+	/** The whole hand-off as one zip; null where the show can't be flown and no draft was asked for. */
+	readonly zip: Uint8Array | null;
+	readonly files: readonly { readonly name: string; readonly size: number }[];
 	readonly revision: string;
+	readonly draft: boolean;
 	readonly notes: readonly string[];
 }
 
@@ -120,19 +120,34 @@ async function handoff(ask: HandOffAsk, report: Report): Promise<HandOffAnswer> 
 		import("../core/light/index.ts"),
 		import("fflate"),
 	]);
-	const slots = new Map(ask.slots);
-	const light = compileLight(ask.show, ask.flight.stays, slots, ask.curves);
-	const { files, revision, notes } = handOff({ ...ask, slots, light }, ask.options, report);
-	const zip = zipSync(Object.fromEntries(files.map(({ name, bytes }) => [name, bytes])), {
-		// The flight paths are a zip already; the rest is small.
-		level: 6,
-		// Zip has no times before 1980; a fixed one lets equal shows give equal bytes.
-		mtime: "1980-01-01T00:00:00",
-	});
-	return { zip, files: files.map(({ name }) => name), revision, notes };
+	const { show, flight, check, options } = ask;
+	const light = compileLight(show, flight.stays, new Map(ask.slots), ask.curves);
+	const { files, revision, draft, notes } = handOff({ show, flight, check, light }, options, report);
+	const zip =
+		files.length === 0
+			? null
+			: zipSync(Object.fromEntries(files.map(({ name, bytes }) => [name, bytes])), {
+					// Zip has no times before 1980; a fixed one lets equal shows give equal bytes.
+					mtime: "1980-01-01T00:00:00",
+				});
+	return { zip, files: files.map(({ name, bytes }) => ({ name, size: bytes.length })), revision, draft, notes };
 }
 
-export const jobs = { analyse, lay, plan, check, draft, handoff };
+/** Bytes of a `*.starstave.json` or a `*.starstave` → show, with the soundtrack that lies beside it. */
+async function read({ bytes }: { readonly bytes: Uint8Array }): Promise<PackedShow> {
+	const { readShow, unpackShow } = await import("../core/show/index.ts");
+	const isZip = bytes[0] === 0x50 && bytes[1] === 0x4b;
+	if (isZip) return unpackShow(bytes);
+	return { show: readShow(new TextDecoder().decode(bytes)), soundtrack: null };
+}
+
+/** The other way: a zip where there is a soundtrack to lie beside it, else plain JSON. */
+async function write(ask: PackedShow): Promise<Uint8Array> {
+	const { packShow, writeShow } = await import("../core/show/index.ts");
+	return ask.soundtrack === null ? new TextEncoder().encode(writeShow(ask.show)) : packShow(ask);
+}
+
+export const jobs = { analyse, lay, plan, check, draft, handoff, read, write };
 
 export type JobKind = keyof typeof jobs;
 export type JobAsk<K extends JobKind> = Parameters<(typeof jobs)[K]>[0];
