@@ -4,11 +4,14 @@ import { StarstaveError } from "../units/index.ts";
 import type { Analysis, MusicSection, Sound } from "./analysis.ts";
 import { HEARING_RATE, hearBands } from "./bands.ts";
 import { drawCurves, drawPeaks } from "./curves.ts";
+import { type BarLikeness, compareBars } from "./describe-bars.ts";
+import { findBoundaries } from "./find-sections.ts";
 import { fluxActivation } from "./flux.ts";
 import { followBeats } from "./follow-beats.ts";
 import { hearHarmony } from "./harmony.ts";
 import { type Loudness, measureLoudness, SILENCE } from "./loudness.ts";
 import { findMoments } from "./moments.ts";
+import { nameSections } from "./name-sections.ts";
 import { type PlacedBeats, placeBeats } from "./place-beats.ts";
 
 /** Rises whenever the same samples would give another answer. */
@@ -56,7 +59,9 @@ export function analyse(sound: Sound, options: AnalyseOptions = {}): Analysis {
 	const placed = judge(placeBeats(activation, walk, soundingNear(loudness)), loudness, notes);
 	tell(0.9, "sections");
 	const curves = drawCurves(bands, loudness);
-	const sections = findSections(placed);
+	const edges = placed.bars.length > 0 ? barEdges(placed, length / sampleRate) : new Float64Array(0);
+	const likeness = compareBars(bands, harmony, edges);
+	const sections = divide(placed, likeness, edges, options.detail ?? 0.5);
 	const momentary = { values: loudness.momentary, rate: loudness.rate };
 	const moments = findMoments(placed.beats, placed.bars, momentary, curves);
 	tell(1, "done");
@@ -128,8 +133,27 @@ function tempoOf(beats: Float64Array): number {
 	return 60 / intervals[Math.floor(intervals.length / 2)];
 }
 
-function findSections(placed: PlacedBeats): MusicSection[] {
-	const count = placed.beats.length;
-	if (count === 0) return [];
-	return [{ start: placed.beats[0], end: placed.beats[count - 1], fromBeat: 0, toBeat: count, letter: "A" }];
+/** Seconds at which each bar starts, and where the last one ends. */
+function barEdges({ beats, bars }: PlacedBeats, duration: number): Float64Array {
+	const last = beats.length - 1;
+	const end = Math.min(duration, beats[last] + (last > 0 ? beats[last] - beats[last - 1] : 1));
+	return Float64Array.from([...bars.map((bar) => beats[bar.beat]), end]);
+}
+
+/** Sections with their letters, from the first beat to the last. */
+function divide(placed: PlacedBeats, likeness: BarLikeness, edges: Float64Array, detail: number): MusicSection[] {
+	const starts = findBoundaries(likeness, detail);
+	const letters = nameSections(likeness, starts);
+	return starts.map((bar, i) => {
+		const next = starts[i + 1];
+		// A pickup before the first bar belongs to the first section.
+		const fromBeat = i === 0 ? 0 : placed.bars[bar].beat;
+		return {
+			start: i === 0 ? placed.beats[0] : edges[bar],
+			end: next === undefined ? edges[edges.length - 1] : edges[next],
+			fromBeat,
+			toBeat: next === undefined ? placed.beats.length : placed.bars[next].beat,
+			letter: letters[i],
+		};
+	});
 }
