@@ -70,8 +70,9 @@ export function makeTrack(bpm: number, bars: number, seed = 1): MadeTrack {
 export function writeWav(sound: Float32Array, sampleRate = RATE): Uint8Array {
 	const bytes = new Uint8Array(44 + sound.length * 2);
 	const view = new DataView(bytes.buffer);
-	const word = (at: number, text: string) =>
-		[...text].forEach((letter, i) => view.setUint8(at + i, letter.charCodeAt(0)));
+	const word = (at: number, text: string) => {
+		for (let i = 0; i < text.length; i++) view.setUint8(at + i, text.charCodeAt(i));
+	};
 	word(0, "RIFF");
 	view.setUint32(4, 36 + sound.length * 2, true);
 	word(8, "WAVEfmt ");
