@@ -1,8 +1,9 @@
 import type { Shape } from "../show/index.ts";
-import { StarstaveError } from "../units/index.ts";
 import { spreadHelix, spreadLine, spreadRing } from "./curves.ts";
-import type { Measure } from "./measure.ts";
+import { spreadDrawing } from "./drawing.ts";
+import { type Measure, uprightShare } from "./measure.ts";
 import { spreadDisc, spreadGrid, spreadSphere, spreadWave } from "./surfaces.ts";
+import { spreadText } from "./text.ts";
 
 /** Slots of a shape in its own frame, with what the shape itself knows of colours and groups. */
 export interface Spread {
@@ -38,7 +39,23 @@ export function spreadShape(shape: Shape, measure: Measure): Spread {
 		case "helix":
 			return { positions: spreadHelix(shape.count, shape.radius, shape.height, shape.turns, measure) };
 		case "text":
+			return remember(shape, measure, () => spreadText(shape, measure));
 		case "drawing":
-			throw new StarstaveError("formation", `A ${shape.kind} can't be spread yet.`);
+			return remember(shape, measure, () => spreadDrawing(shape, measure));
 	}
+}
+
+/**
+ * Text and drawings take up to a second to spread, and every edit of a show asks for all formations again. Shapes are
+ * never changed in place, so what one gave can be kept for as long as it lives.
+ */
+const remembered = new WeakMap<Shape, { share: number; spread: Spread }>();
+
+function remember(shape: Shape, measure: Measure, spreadIt: () => Spread): Spread {
+	const share = uprightShare(measure);
+	const held = remembered.get(shape);
+	if (held !== undefined && held.share === share) return held.spread;
+	const spread = spreadIt();
+	remembered.set(shape, { share, spread });
+	return spread;
 }
