@@ -1,5 +1,10 @@
+export { readCssColour } from "./css-colour.ts";
+export { type Contour, flattenSegments } from "./flatten.ts";
+export { parsePathData } from "./path-data.ts";
 export { toMillimetre } from "./place.ts";
+export { type PointsFile, readPointsCsv } from "./points-csv.ts";
 export { boxOf, fillFleet, fleetSlotsOf } from "./reserve.ts";
 export { sizeToSpacing, stretchShape } from "./size.ts";
 export { slotsOf } from "./slots-of.ts";
+export { type Drawing, readSvg } from "./svg.ts";
 export { takeoffSlots } from "./takeoff.ts";
