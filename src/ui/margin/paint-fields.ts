@@ -36,8 +36,11 @@ export const PAINT_KINDS: readonly { readonly value: Kind; readonly name: string
 ];
 
 const SPOKEN: Record<Kind, string> = {
-	flat: "one colour",
+	flat: "one flat colour",
 	gradient: "a gradient",
+	band: "a travelling band",
+	interleave: "an interleave",
+	glint: "a glint",
 	swell: "a swell",
 	picture: "the picture's own colours",
 };
@@ -47,6 +50,9 @@ const LABELS: Record<string, string> = {
 	every: "every, beats",
 	floor: "between pulses, 0 to 1",
 	axis: "runs",
+	share: "lit at a time, 0 to 1",
+	width: "width, share",
+	background: "between",
 };
 const CHOICES: Record<string, readonly { readonly value: string; readonly name: string }[]> = {
 	axis: [
@@ -72,6 +78,12 @@ export function freshPaint(kind: Kind, before: Paint): Paint {
 			return { kind, colour: first };
 		case "gradient":
 			return { kind, from: first, to: second, axis: "up" };
+		case "band":
+			return { kind, colour: first, background: second, axis: "right", width: 0.3, every: 4 };
+		case "interleave":
+			return { kind, colours: [first, second], every: 0 };
+		case "glint":
+			return { kind, colour: first, background: "#000000", share: 0.15, every: 1 };
 		case "swell":
 			return { kind, colour: first, every: 1, floor: 0.35 };
 		case "picture":
@@ -88,7 +100,7 @@ export function paintFields(paint: Paint): PaintField[] {
 		const write = (next: unknown) => ({ ...paint, [key]: next }) as Paint;
 		if (typeof value === "string" && value.startsWith("#")) fields.push({ kind: "colour", key, label, value, write });
 		else if (typeof value === "number")
-			fields.push({ kind: "number", key, label, value, step: key === "floor" ? 0.05 : 0.5, write });
+			fields.push({ kind: "number", key, label, value, step: key === "every" ? 0.5 : 0.05, write });
 		else if (typeof value === "string" && CHOICES[key])
 			fields.push({ kind: "choice", key, label, value, choices: CHOICES[key], write });
 		else if (Array.isArray(value)) {
