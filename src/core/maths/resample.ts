@@ -53,6 +53,7 @@ export function resampleMix(channels: readonly Float32Array[], from: number, to:
 	const reach = Math.ceil(CROSSINGS * Math.max(1, step));
 	const taps = 2 * reach;
 	const table = kernelTable(phases, reach, Math.min(1, 1 / step));
+	const decimate = createDecimator(phases === 1 ? step : 1, table);
 	// The input is mixed block by block: each block's outputs need `reach` input samples on either side.
 	const block = 16_384;
 	const input = new Float32Array(Math.ceil(block * step) + taps + 4);
@@ -61,7 +62,7 @@ export function resampleMix(channels: readonly Float32Array[], from: number, to:
 		const base = Math.floor(first * step) - reach;
 		mixed(base, input);
 		if (phases === 1) {
-			decimateBlock(input, -base, step, table, reach, out, first, last);
+			decimate(input, first * step - reach + 1 - base, out, first, last);
 			continue;
 		}
 		for (let i = first; i < last; i++) {
@@ -88,31 +89,67 @@ export function resampleMix(channels: readonly Float32Array[], from: number, to:
 }
 
 /**
- * A whole number of input samples an output sample: one symmetric row of weights, of which those at whole multiples of
- * the step but the centre's are zero. Both save work where most of it is done (44.1 → 22.05 kHz).
+ * A whole number of input samples an output sample: the input is dealt out into `step` signals of every step-th sample,
+ * each filtered by its own share of the weights, which then lie side by side. Half of them are zero where the step is 2
+ * (all even places of a half-band sinc but the centre) and are left out.
  */
-function decimateBlock(
-	input: Float32Array,
-	origin: number,
+function createDecimator(
 	step: number,
-	table: Float32Array,
-	reach: number,
-	out: Float32Array,
-	first: number,
-	last: number,
-): void {
-	const centre = reach - 1;
-	const offsets: number[] = [];
-	for (let k = 1; k < reach; k++) if (k % step !== 0) offsets.push(k);
-	const weights = Float32Array.from(offsets, (k) => table[centre + k]);
-	const distances = Int32Array.from(offsets);
-	for (let i = first; i < last; i++) {
-		const at = origin + i * step;
-		let sum = input[at] * table[centre];
-		for (let k = 0; k < distances.length; k++) {
-			sum += weights[k] * (input[at - distances[k]] + input[at + distances[k]]);
+	weights: Float32Array,
+): (input: Float32Array, from: number, out: Float32Array, first: number, last: number) => void {
+	const shares = Array.from({ length: step }, (_, p) => {
+		const dealt = Array.from({ length: Math.ceil((weights.length - p) / step) }, (_, k) => weights[p + k * step]);
+		const lead = dealt.findIndex((w) => Math.abs(w) > 1e-9);
+		let end = dealt.length;
+		while (end > lead && Math.abs(dealt[end - 1]) <= 1e-9) end--;
+		const kept = lead < 0 ? [] : dealt.slice(lead, end);
+		while (kept.length % 4 !== 0) kept.push(0);
+		return { place: p + Math.max(0, lead) * step, weights: Float64Array.from(kept) };
+	}).filter((share) => share.weights.length > 0);
+	let dealt = new Float64Array(0);
+	let sums = new Float64Array(0);
+	return (input, from, out, first, last) => {
+		const count = Math.ceil((last - first) / 4) * 4;
+		if (sums.length < count) sums = new Float64Array(count);
+		sums.fill(0);
+		for (const share of shares) {
+			const need = count + share.weights.length + 4;
+			if (dealt.length < need) dealt = new Float64Array(need);
+			for (let k = 0, at = from + share.place; k < need; k++, at += step) dealt[k] = at < input.length ? input[at] : 0;
+			filterInto(sums, count, dealt, share.weights);
 		}
-		out[i] = sum;
+		for (let i = first; i < last; i++) out[i] = sums[i - first];
+	};
+}
+
+/** sums[i] += Σ weights[k] · x[i + k], four sums and four weights at a time so that each value is read once for four. */
+function filterInto(sums: Float64Array, count: number, x: Float64Array, weights: Float64Array): void {
+	for (let i = 0; i < count; i += 4) {
+		let [a, b, c, d] = [0, 0, 0, 0];
+		let x0 = x[i];
+		let x1 = x[i + 1];
+		let x2 = x[i + 2];
+		for (let k = 0; k < weights.length; k += 4) {
+			const x3 = x[i + k + 3];
+			const x4 = x[i + k + 4];
+			const x5 = x[i + k + 5];
+			const x6 = x[i + k + 6];
+			const w0 = weights[k];
+			const w1 = weights[k + 1];
+			const w2 = weights[k + 2];
+			const w3 = weights[k + 3];
+			a += w0 * x0 + w1 * x1 + w2 * x2 + w3 * x3;
+			b += w0 * x1 + w1 * x2 + w2 * x3 + w3 * x4;
+			c += w0 * x2 + w1 * x3 + w2 * x4 + w3 * x5;
+			d += w0 * x3 + w1 * x4 + w2 * x5 + w3 * x6;
+			x0 = x4;
+			x1 = x5;
+			x2 = x6;
+		}
+		sums[i] += a;
+		sums[i + 1] += b;
+		sums[i + 2] += c;
+		sums[i + 3] += d;
 	}
 }
 
