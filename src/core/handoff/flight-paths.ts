@@ -129,7 +129,8 @@ export function zipFlightPaths(
 	const colours = new Uint8Array(3 * source.drones);
 	plans.forEach(({ table, rate, file }, index) => {
 		const name = `${table}-${file.suffix}.csv`;
-		const entry = new ZipDeflate(name, { level: 6 });
+		// Rows repeat so much that a deeper search saves 2 % of the bytes for half as much time again.
+		const entry = new ZipDeflate(name, { level: 3 });
 		entry.mtime = ZIP_TIME;
 		zip.add(entry);
 		const digest = createSha256();

@@ -11,9 +11,12 @@ import { micro } from "./flight-paths.ts";
  * the rounding; they are measured all the same.
  */
 export interface RowProof {
-	/** m: smallest distance in the measure of spacing of two drones above the ground; Infinity with fewer than two. */
+	/**
+	 * m: smallest distance in the measure of spacing of two drones above the ground, where it is under spacing or little
+	 * more; Infinity where no two ever come that near.
+	 */
 	readonly gap: number;
-	/** Seconds and drones from 0 at the smallest gap; null with fewer than two drones above the ground. */
+	/** Seconds and drones from 0 at the smallest gap; null where no two come near. */
 	readonly at: { readonly seconds: number; readonly drones: readonly [number, number] } | null;
 	/** m: likewise where one of the two is below `GROUND`. */
 	readonly groundGap: number;

@@ -131,6 +131,7 @@ h2 small { font-weight: normal; color: #444; float: right; font-size: 9pt; }
 table { border-collapse: collapse; width: 100%; font-size: 8.5pt; font-variant-numeric: tabular-nums; }
 th, td { border-bottom: 1px solid #ccc; padding: .2em .5em .2em 0; text-align: left; vertical-align: top; }
 tr { break-inside: avoid; } .answer { font-size: 13pt; font-weight: bold; }
+@media print { .sheet { break-before: page; } }
 .broken { font-weight: bold; text-decoration: underline; } .draft { border: 2px solid #111; padding: .5em 1em; font-weight: bold; }
 `;
 
@@ -145,7 +146,8 @@ function pageStyle(title: string, revision: string): string {
 export function writeReport(input: ReportInput): string {
 	const { show, check, revision } = input;
 	const title = show.title === "" ? "Untitled show" : show.title;
-	const heading = (name: string): Html => html`<h2>${name} <small>revision ${revision}</small></h2>\n`;
+	const heading = (name: string, sheet = false): Html =>
+		html`<h2${sheet ? html` class="sheet"` : null}>${name} <small>revision ${revision}</small></h2>\n`;
 	const { airborne, limit } = check.endurance;
 	const enduranceHeld = airborne <= limit;
 	const formations = check.formations.map(({ id, gap, verdicts }) => [
@@ -172,7 +174,7 @@ ${heading("Flashes")}${
 ${heading("Notes")}${list([...check.notes, ...input.notes])}
 ${heading("Limits")}${limitsSection(show)}
 ${heading("Assumptions and tolerances")}${list(assumptions(input))}
-${heading("Run sheet")}${runSheet(input.lines, input.flight, input.end, input.timecode)}`;
+${heading("Run sheet", true)}${runSheet(input.lines, input.flight, input.end, input.timecode)}`;
 	return `<!doctype html>
 <html lang="en-GB">
 <head>

@@ -24,8 +24,9 @@ function runLines(lines: readonly CueLine[], flight: ShowFlight | null, end: num
 		run.push({ time, rank: 1, what: "fleet", number: "", words, place: "", note: "" });
 	};
 	if (flight !== null) {
-		const launch = flight.legs.find((leg) => leg.id === "launch");
-		const landing = flight.legs.find((leg) => leg.id === "landing");
+		// Launch and landing may each take several legs: up, then across.
+		const launch = flight.legs.filter((leg) => leg.id.startsWith("launch")).at(-1);
+		const landing = flight.legs.find((leg) => leg.id.startsWith("landing"));
 		if (launch !== undefined) {
 			fleet(flight.begins, "Motors start, launch begins");
 			fleet(launch.arrives, "Fleet stands in the opening, dark");
