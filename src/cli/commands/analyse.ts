@@ -1,0 +1,56 @@
+import type { Answer } from "../answer.ts";
+import type { Arguments, CommandShape } from "../arguments.ts";
+import type { Progress } from "../progress.ts";
+import { hearFile, type Track } from "../tracks.ts";
+
+export const analyseShape: CommandShape = {
+	name: "analyse",
+	summary: "hear a soundtrack: beats, bars, sections, loudness",
+	operands: ["TRACK"],
+	flags: [{ name: "--json", value: "FILE|-", help: "write the answer as JSON to a file, or to stdout" }],
+	required: [],
+	more: ["Seconds count from the first sample. WAV, MP3, FLAC, Ogg Vorbis, Opus (AAC: in the browser alone)."],
+};
+
+/** What is heard in a track, under the keys of the JSON answer. */
+export function describeTrack({ soundtrack, analysis, samples, timing }: Track) {
+	return {
+		soundtrack,
+		tempo: analysis.tempo,
+		beats: analysis.beats,
+		downbeats: analysis.bars.map((bar) => analysis.beats[bar.beat]),
+		bars: analysis.bars,
+		sections: analysis.sections.map(({ start, end, letter }) => ({ start, end, letter })),
+		confidence: analysis.confidence,
+		loudness: {
+			integrated: analysis.loudness.integrated,
+			shortTerm: analysis.loudness.shortTerm,
+			rate: analysis.loudness.rate,
+		},
+		moments: analysis.moments,
+		notes: [...samples.notes, ...analysis.notes],
+		timing,
+	};
+}
+
+function clock(seconds: number): string {
+	const whole = Math.round(seconds);
+	return `${Math.floor(whole / 60)}:${String(whole % 60).padStart(2, "0")}`;
+}
+
+export async function runAnalyse(given: Arguments, progress: Progress): Promise<Answer> {
+	const track = await hearFile(given.operands[0], progress);
+	const { analysis, soundtrack } = track;
+	const json = describeTrack(track);
+	const { integrated } = analysis.loudness;
+	const lines = [
+		`${soundtrack.file}: ${clock(soundtrack.duration)}, ${soundtrack.sampleRate} Hz, ${soundtrack.channels} ${soundtrack.channels === 1 ? "channel" : "channels"}`,
+		analysis.beats.length === 0
+			? "No beat was found."
+			: `${analysis.tempo.bpm.toFixed(1)} beats a minute, ${analysis.beats.length} beats, ${analysis.bars.length} bars, confidence ${analysis.confidence.toFixed(2)}`,
+		Number.isFinite(integrated) ? `Loudness ${integrated.toFixed(1)} LUFS` : "The soundtrack is silent.",
+		...analysis.sections.map(({ start, end, letter }) => `Section ${letter}  ${clock(start)} to ${clock(end)}`),
+		...json.notes,
+	];
+	return { code: 0, json, lines };
+}

@@ -1,0 +1,60 @@
+import type { TransitionCheck } from "../../core/flight/index.ts";
+import { find, type Show } from "../../core/show/index.ts";
+import type { Answer } from "../answer.ts";
+import type { Arguments, CommandShape } from "../arguments.ts";
+import { type Flown, flyWhole } from "../fly.ts";
+import type { Progress } from "../progress.ts";
+import { readShowFile } from "../shows.ts";
+import { hearOwnTrack } from "../tracks.ts";
+
+export const checkShape: CommandShape = {
+	name: "check",
+	summary: "feasibility of a whole show; 2 when any part of it can't be flown",
+	operands: ["SHOW"],
+	flags: [
+		{ name: "--soundtrack", value: "FILE", help: "the show's audio, where it doesn't lie beside the show" },
+		{ name: "--json", value: "FILE|-", help: "write the answer as JSON to a file, or to stdout" },
+	],
+	required: [],
+	more: ["The answer counts launch, every transition, landing, every formation and endurance; flashes are a warning."],
+};
+
+/** The check under the keys of the JSON answer. */
+export function describeCheck(flown: Flown) {
+	const { check, flashes, notes, timing } = flown;
+	return { ...check, flashes, notes: [...check.notes, ...notes], timing };
+}
+
+function legLine(show: Show, leg: TransitionCheck): string {
+	const cue = find(show.cues, leg.id);
+	const name = cue === undefined ? leg.id : `Cue ${cue.number}`;
+	const needed = leg.needed === null ? "no time is enough" : `needs ${leg.needed.toFixed(2)} s`;
+	const gap = leg.gap === null ? "" : `, gap ${leg.gap.distance.toFixed(3)} m`;
+	return `${name}: ${leg.verdicts.join(" ")}, ${needed} of ${leg.available.toFixed(2)} s${gap}`;
+}
+
+/** The check in lines for people: every leg, what is wrong beside them, the answer last. */
+export function checkLines(show: Show, flown: Flown): string[] {
+	const { check, flashes, notes } = flown;
+	const legs = [check.launch, ...check.transitions, check.landing].filter((leg) => leg !== null);
+	const { airborne, limit } = check.endurance;
+	const lines = legs.map((leg) => legLine(show, leg));
+	for (const { id, gap, verdicts } of check.formations) {
+		if (verdicts.includes("flies")) continue;
+		const name = find(show.formations, id)?.name || id;
+		lines.push(`Formation ${name}: ${verdicts.join(" ")}, smallest distance ${gap.toFixed(3)} m`);
+	}
+	lines.push(`Endurance: ${airborne.toFixed(0)} s from motor start, limit ${limit.toFixed(0)} s`);
+	for (const flash of flashes) lines.push(`Warning: ${flash.sentence}`);
+	for (const note of [...check.notes, ...notes]) lines.push(note);
+	lines.push(check.flies ? "The show flies." : "The show can't be flown as it stands.");
+	return lines;
+}
+
+export async function runCheck(given: Arguments, progress: Progress): Promise<Answer> {
+	const [path] = given.operands;
+	const { show, soundtrack } = readShowFile(path);
+	const track = await hearOwnTrack(show, path, soundtrack, given.values.get("--soundtrack"), progress);
+	const flown = flyWhole(show, track?.analysis ?? null, progress);
+	return { code: flown.check.flies ? 0 : 2, json: describeCheck(flown), lines: checkLines(show, flown) };
+}

@@ -1,0 +1,53 @@
+import { roughCut } from "../../core/draft/index.ts";
+import { toList } from "../../core/show/index.ts";
+import type { Answer } from "../answer.ts";
+import { type Arguments, type CommandShape, numberFlag } from "../arguments.ts";
+import { flyWhole } from "../fly.ts";
+import type { Progress } from "../progress.ts";
+import { requireShowPlace, writeShowFile } from "../shows.ts";
+import { hearFile } from "../tracks.ts";
+import { checkLines, describeCheck } from "./check.ts";
+
+export const draftShape: CommandShape = {
+	name: "draft",
+	summary: "a rough cut: a show for a soundtrack, ready to fly and to be worked over",
+	operands: ["TRACK"],
+	flags: [
+		{ name: "--drones", value: "N", help: "drones in the fleet" },
+		{
+			name: "--out",
+			value: "SHOW",
+			help: "where the show goes: *.starstave.json, or *.starstave with the soundtrack in it",
+		},
+		{ name: "--title", value: "TITLE", help: "the show's title; the soundtrack's name unless given" },
+		{ name: "--seed", value: "N", help: "another number, another cut of the same music; 1 unless given" },
+		{ name: "--force", value: null, help: "replace the show that stands there" },
+		{ name: "--json", value: "FILE|-", help: "write the answer as JSON to a file, or to stdout" },
+	],
+	required: ["--drones", "--out"],
+	more: [],
+};
+
+export async function runDraft(given: Arguments, progress: Progress): Promise<Answer> {
+	const [path] = given.operands;
+	const out = given.values.get("--out") ?? "";
+	const drones = numberFlag(given, "--drones", 0, { least: 1, most: 20000, whole: true });
+	const seed = numberFlag(given, "--seed", 1, { least: 0, most: 2 ** 31 - 1, whole: true });
+	requireShowPlace(out, given.switches.has("--force"));
+	const track = await hearFile(path, progress);
+	const title = given.values.get("--title") ?? track.soundtrack.file.replace(/\.[^.]+$/, "");
+	const { show } = roughCut(track.analysis, track.soundtrack, { drones, title, seed }, (share, stage) =>
+		progress.tell(share, stage),
+	);
+	// What was cut is checked from the show alone, as `check` would from the file.
+	const flown = flyWhole(show, track.analysis, progress);
+	writeShowFile(out, show, { name: track.soundtrack.file, bytes: track.bytes });
+	const cues = { colour: 0, intensity: 0, transition: 0 };
+	for (const cue of toList(show.cues)) cues[cue.kind] += 1;
+	const json = { cues, check: describeCheck(flown), soundtrack: track.soundtrack, timing: track.timing };
+	const lines = [
+		`${out}: ${cues.transition} transitions, ${cues.colour} colour cues, ${cues.intensity} intensity cues`,
+		...checkLines(show, flown),
+	];
+	return { code: flown.check.flies ? 0 : 2, json, lines };
+}

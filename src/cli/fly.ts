@@ -1,0 +1,96 @@
+import { flyShow, type LegProblem, type Plan, planLeg, type ShowCheck, type ShowFlight } from "../core/flight/index.ts";
+import { fleetSlotsOf, takeoffSlots } from "../core/formation/index.ts";
+import { compileLight, type Flash, findFlashes, type LightProgram } from "../core/light/index.ts";
+import type { Analysis } from "../core/music/index.ts";
+import { createBeatMap, endOfShow, type Show, toList } from "../core/show/index.ts";
+import { StarstaveError } from "../core/units/index.ts";
+import { type Progress, secondsSince } from "./progress.ts";
+
+/** A show with everything that is computed from it. */
+export interface Flown {
+	readonly show: Show;
+	readonly flight: ShowFlight;
+	readonly check: ShowCheck;
+	readonly light: LightProgram;
+	readonly flashes: readonly Flash[];
+	/** What could not be judged, and why. */
+	readonly notes: readonly string[];
+	/** Seconds by transition id; a plan that serves two of them is counted with the first. */
+	readonly timing: { readonly plan: Record<string, number>; readonly prove: Record<string, number> };
+}
+
+type Proofs = NonNullable<Parameters<typeof flyShow>[5]>;
+type Proof = Proofs extends Map<string, infer P> ? P : never;
+
+/** A cache that tells how long each proof took: it is asked before a proof and filled after it. */
+class TimedProofs extends Map<string, Proof> {
+	readonly seconds = new Map<string, number>();
+	private asked = 0;
+
+	override get(key: string): Proof | undefined {
+		this.asked = performance.now();
+		return super.get(key);
+	}
+
+	override set(key: string, proof: Proof): this {
+		this.seconds.set(key, secondsSince(this.asked));
+		return super.set(key, proof);
+	}
+}
+
+/** @throws StarstaveError where there is nothing that could fly */
+function requireFleet(show: Show): void {
+	if (show.fleet.count === 0) {
+		throw new StarstaveError("fleet", "The fleet has 0 drones, so nothing can be flown; give fleet.count at least 1.");
+	}
+	if (show.formations.order.length === 0) {
+		throw new StarstaveError("formation", "The show has no formation, so there is nothing to fly; add at least one.");
+	}
+	if (show.opening === null) {
+		throw new StarstaveError(
+			"show",
+			`The show names no opening; set opening to the formation in which the fleet waits, ${show.formations.order[0]} for one.`,
+		);
+	}
+}
+
+function followsMusic(show: Show): boolean {
+	return toList(show.cues).some((cue) => cue.kind === "intensity" && typeof cue.level !== "number");
+}
+
+/**
+ * Plans every leg, proves it, and compiles the light.
+ * @param analysis what is heard in the show's soundtrack, or null where the audio is not at hand
+ */
+export function flyWhole(show: Show, analysis: Analysis | null, progress: Progress): Flown {
+	requireFleet(show);
+	const slots = fleetSlotsOf(show);
+	const ground = takeoffSlots(show);
+	const plan: Record<string, number> = {};
+	const proofs = new TimedProofs();
+	const legs = 4 + toList(show.cues).filter((cue) => cue.kind === "transition").length;
+	let planned = 0;
+	const planOf = (problem: LegProblem): Plan => {
+		progress.tell(planned++ / legs, "planning");
+		const start = performance.now();
+		const made = planLeg(problem);
+		plan[problem.id] = (plan[problem.id] ?? 0) + secondsSince(start);
+		return made;
+	};
+	const { flight, check, problems } = flyShow(show, slots, ground, planOf, new Map(), proofs);
+	const prove: Record<string, number> = {};
+	for (const { id, key } of problems) {
+		const seconds = proofs.seconds.get(key);
+		if (seconds !== undefined) prove[id] = (prove[id] ?? 0) + seconds;
+		proofs.seconds.delete(key);
+	}
+	progress.tell(0.95, "light");
+	const light = compileLight(show, flight.stays, slots, analysis?.curves ?? []);
+	const end = endOfShow(show, createBeatMap(show.grid));
+	const flashes = findFlashes(light, Math.min(0, flight.begins), Math.max(end, flight.ends));
+	const notes: string[] = [];
+	if (analysis === null && followsMusic(show)) {
+		notes.push("The soundtrack was not at hand, so flashes of what follows the music can't be judged.");
+	}
+	return { show, flight, check, light, flashes, notes, timing: { plan, prove } };
+}

@@ -1,0 +1,90 @@
+#!/usr/bin/env node
+import { StarstaveError } from "../core/units/index.ts";
+import { type Answer, giveAnswer, requireAnswerPlace } from "./answer.ts";
+import { type Arguments, type CommandShape, readArguments, usage } from "./arguments.ts";
+import { analyseShape, runAnalyse } from "./commands/analyse.ts";
+import { checkShape, runCheck } from "./commands/check.ts";
+import { draftShape, runDraft } from "./commands/draft.ts";
+import { handoffShape, runHandoff } from "./commands/handoff.ts";
+import { retimeShape, runRetime } from "./commands/retime.ts";
+import { createProgress, type Progress } from "./progress.ts";
+
+interface Command {
+	readonly shape: CommandShape;
+	run(given: Arguments, progress: Progress): Promise<Answer>;
+}
+
+const COMMANDS: readonly Command[] = [
+	{ shape: analyseShape, run: runAnalyse },
+	{ shape: draftShape, run: runDraft },
+	{ shape: checkShape, run: runCheck },
+	{ shape: retimeShape, run: runRetime },
+	{ shape: handoffShape, run: runHandoff },
+];
+
+function overview(): string {
+	const width = Math.max(...COMMANDS.map(({ shape }) => shape.name.length));
+	const lines = COMMANDS.map(({ shape }) => `  ${shape.name.padEnd(width)}  ${shape.summary}`);
+	return [
+		"Cut a drone routine to a soundtrack.",
+		"",
+		"starstave COMMAND …",
+		"",
+		...lines,
+		"",
+		"starstave COMMAND --help says more about each.",
+		"Exit status: 0 done, 1 wrong use or bad input, 2 done and the answer is no.",
+		"",
+	].join("\n");
+}
+
+function help(shape: CommandShape): string {
+	const left = (name: string, value: string | null): string => (value === null ? name : `${name} ${value}`);
+	const width = Math.max(...shape.flags.map((flag) => left(flag.name, flag.value).length));
+	const flags = shape.flags.map((flag) => `  ${left(flag.name, flag.value).padEnd(width)}  ${flag.help}`);
+	return [`starstave ${usage(shape)}`, "", `${shape.summary}`, "", ...flags, "", ...shape.more, ""].join("\n");
+}
+
+/** One line: the command, then what is wrong, where, and what would be right. */
+function complain(command: string | null, message: string): void {
+	const name = command === null ? "starstave" : `starstave ${command}`;
+	process.stderr.write(`${name}: ${message.replaceAll(/\s*\n\s*/g, " ")}\n`);
+}
+
+async function main(words: readonly string[]): Promise<number> {
+	const [name, ...rest] = words;
+	if (name === undefined || name === "--help" || name === "help") {
+		process.stdout.write(overview());
+		return name === undefined ? 1 : 0;
+	}
+	const command = COMMANDS.find(({ shape }) => shape.name === name);
+	if (command === undefined) {
+		complain(null, `"${name}" is no command; choose ${COMMANDS.map(({ shape }) => shape.name).join(", ")}, or --help.`);
+		return 1;
+	}
+	if (rest.includes("--help")) {
+		process.stdout.write(help(command.shape));
+		return 0;
+	}
+	const progress = createProgress(name);
+	try {
+		const given = readArguments(command.shape, rest);
+		requireAnswerPlace(given);
+		const answer = await command.run(given, progress);
+		progress.end();
+		giveAnswer(answer, given);
+		return answer.code;
+	} catch (error) {
+		progress.end();
+		if (error instanceof StarstaveError) {
+			complain(name, error.message);
+			return 1;
+		}
+		const fault = error instanceof Error ? error : new Error(String(error));
+		complain(name, `a fault of the program itself (${fault.message}); please report it with the lines below.`);
+		process.stderr.write(`${fault.stack ?? ""}\n`);
+		return 1;
+	}
+}
+
+process.exitCode = await main(process.argv.slice(2));
