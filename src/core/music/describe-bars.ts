@@ -7,7 +7,9 @@ import { CHROMA_RATE, CHROMA_SIZE, type Harmony } from "./harmony.ts";
 const STEPS = 8;
 /** Cosine coefficients of the mel bands that tell timbre. */
 const COSINES = 20;
-const CHROMA_SHARE = 0.35;
+const CHROMA_SHARE = 0.5;
+/** Spread of the Gaussian that turns distance into likeness, as a share of the track's mean squared distance. */
+const SPREAD = 0.5;
 const WIDTH = STEPS * (COSINES + CHROMA_SIZE);
 
 /** Likeness of bars: value [a · count + b] in 0..1, symmetric, 1 on the diagonal. */
@@ -19,7 +21,7 @@ export interface BarLikeness {
 /** Rows of step features: bars · STEPS rows of `size`, each the mean of the frames in that eighth of its bar. */
 function stepMeans(values: Float32Array, size: number, rate: number, edges: Float64Array): Float32Array {
 	const frames = values.length / size;
-	const bars = edges.length - 1;
+	const bars = Math.max(0, edges.length - 1);
 	const means = new Float32Array(bars * STEPS * size);
 	for (let bar = 0; bar < bars; bar++) {
 		const span = edges[bar + 1] - edges[bar];
@@ -36,25 +38,28 @@ function stepMeans(values: Float32Array, size: number, rate: number, edges: Floa
 	return means;
 }
 
-/** Takes each column's mean off and scales the whole to unit variance: loud columns stay loud among themselves. */
-function centre(rows: Float32Array, size: number): void {
+/** Takes each column's mean off and scales the columns to unit variance, each by itself or all alike. */
+function centre(rows: Float32Array, size: number, each: boolean): void {
 	const count = rows.length / size;
-	let square = 0;
+	const squares = new Float64Array(size);
 	for (let k = 0; k < size; k++) {
 		let mean = 0;
 		for (let i = 0; i < count; i++) mean += rows[i * size + k] / count;
 		for (let i = 0; i < count; i++) {
 			rows[i * size + k] -= mean;
-			square += rows[i * size + k] ** 2;
+			squares[k] += rows[i * size + k] ** 2 / count;
 		}
 	}
-	const scale = 1 / Math.sqrt(Math.max(1e-12, square / Math.max(1, rows.length)));
-	for (let i = 0; i < rows.length; i++) rows[i] *= scale;
+	const all = squares.reduce((sum, x) => sum + x, 0) / size;
+	for (let k = 0; k < size; k++) {
+		const scale = 1 / Math.sqrt(Math.max(1e-9, each ? squares[k] : all));
+		for (let i = 0; i < count; i++) rows[i * size + k] *= scale;
+	}
 }
 
 /**
  * Likeness of all pairs of bars: a Gaussian of the distance between their descriptions, as wide as the track's own
- * median distance between neighbours asks for.
+ * differences ask for.
  * @param edges seconds, the start of each bar and the end of the last
  */
 export function compareBars(bands: Bands, harmony: Harmony, edges: Float64Array): BarLikeness {
@@ -72,8 +77,9 @@ export function compareBars(bands: Bands, harmony: Harmony, edges: Float64Array)
 		}
 	}
 	const chroma = stepMeans(harmony.values, CHROMA_SIZE, CHROMA_RATE, edges);
-	centre(cosines, COSINES);
-	centre(chroma, CHROMA_SIZE);
+	// A fine difference of timbre counts as much as loud against soft; the pitch classes keep their proportions.
+	centre(cosines, COSINES, true);
+	centre(chroma, CHROMA_SIZE, false);
 	const rows = new Float32Array(count * WIDTH);
 	for (let step = 0; step < count * STEPS; step++) {
 		const at = step * (COSINES + CHROMA_SIZE);
@@ -97,7 +103,7 @@ export function compareBars(bands: Bands, harmony: Harmony, edges: Float64Array)
 	for (let a = 0; a < count; a++) {
 		values[a * count + a] = 1;
 		for (let b = 0; b < a; b++) {
-			const like = Math.exp(-values[a * count + b] / Math.max(1e-9, mean));
+			const like = Math.exp(-values[a * count + b] / Math.max(1e-9, SPREAD * mean));
 			values[a * count + b] = like;
 			values[b * count + a] = like;
 		}

@@ -1,54 +1,62 @@
 /**
  * Sections on bar lines: the division of the bars into blocks that are most alike within themselves, after Marmoret,
  * Cohen and Bimbot, "Barwise music structure analysis with the correlation block-matching segmentation algorithm"
- * (2023; convolutive block matching 2022), with Foote's novelty (2000) at the block's start added to a block's score.
+ * (2023; convolutive block matching 2022). A block's start gains by the change of what repeats there: the novelty of the
+ * time-lag picture of Serrà, Müller, Grosche and Arcos, "Unsupervised music structure annotation by time series
+ * structure features and segment similarity" (2014).
  */
 import type { BarLikeness } from "./describe-bars.ts";
 
 /** Bars on either side of the diagonal that count towards a block. */
-const BAND = 7;
+const BAND = 15;
 const LONGEST = 32;
-const HALF_WIDTHS = [4, 8, 16];
-/** Weights of likeness, of length, of novelty, and the novelty that a boundary needs; found on rendered songs. */
-const LIKENESS = 0.58;
-const LENGTH = 0.59;
-const NOVELTY = 0.19;
-const NOVELTY_NEEDED = 0.36;
+/** Weights of likeness, of length and of novelty; found on rendered songs, as all figures here. */
+const LIKENESS = 1.2;
+const LENGTH = 0.3;
+const NOVELTY = 0.1;
+/** Bars over which the time-lag picture is smoothed (spread of a Gaussian). */
+const SMOOTHING = 1;
+/** What a boundary costs more at no detail than at full detail. */
+const DETAIL = 1.2;
 
 /** How unusual a section of so many bars is: people write in eights. */
 function lengthPenalty(bars: number): number {
-	if (bars === 8) return 0;
-	if (bars % 4 === 0) return 0.1;
-	return bars % 2 === 0 ? 0.4 : 1;
+	if (bars === 8 || bars === 16) return 0;
+	if (bars % 4 === 0) return 0.2;
+	return bars % 2 === 0 ? 0.5 : 0.7;
 }
 
-/** Foote's checkerboard along the diagonal, as the mean of its half-widths' z-scores. */
+/** How much the picture of what repeats changes at each bar, as a z-score. */
 export function barNovelty({ count, values }: BarLikeness): Float64Array {
+	const reach = Math.ceil(2 * SMOOTHING);
+	const taper = Float64Array.from({ length: 2 * reach + 1 }, (_, k) => Math.exp(-0.5 * ((k - reach) / SMOOTHING) ** 2));
 	const novelty = new Float64Array(count);
-	for (const half of HALF_WIDTHS) {
-		if (count < 2 * half) continue;
-		const raw = new Float64Array(count);
-		for (let at = 1; at < count; at++) {
+	// Row of bar i: likeness to the bar `lag` before it, for every lag, smoothed over neighbouring bars.
+	let before = new Float64Array(2 * count);
+	let now = new Float64Array(2 * count);
+	for (let i = 0; i < count; i++) {
+		for (let lag = 1 - count; lag < count; lag++) {
 			let sum = 0;
 			let weight = 0;
-			for (let a = -half; a < half; a++) {
-				for (let b = -half; b < half; b++) {
-					const i = at + a;
-					const j = at + b;
-					if (i < 0 || j < 0 || i >= count || j >= count) continue;
-					// A Gaussian taper: what lies near the boundary says most.
-					const taper = Math.exp(-((a + 0.5) ** 2 + (b + 0.5) ** 2) / (half * half));
-					sum += a < 0 === b < 0 ? taper * values[i * count + j] : -taper * values[i * count + j];
-					weight += taper;
-				}
+			for (let k = -reach; k <= reach; k++) {
+				const bar = i + k;
+				if (bar < 0 || bar >= count) continue;
+				const other = bar - lag;
+				weight += taper[k + reach];
+				if (other >= 0 && other < count) sum += taper[k + reach] * values[bar * count + other];
 			}
-			raw[at] = sum / Math.max(1e-9, weight);
+			now[lag + count] = sum / weight;
 		}
-		const mean = raw.reduce((x, y) => x + y, 0) / count;
-		const spread = Math.sqrt(raw.reduce((x, y) => x + (y - mean) ** 2, 0) / count) || 1;
-		for (let at = 0; at < count; at++) novelty[at] += (raw[at] - mean) / spread / HALF_WIDTHS.length;
+		if (i > 0) {
+			let change = 0;
+			for (let k = 0; k < now.length; k++) change += (now[k] - before[k]) ** 2;
+			novelty[i] = change;
+		}
+		[before, now] = [now, before];
 	}
-	return novelty;
+	const mean = novelty.reduce((x, y) => x + y, 0) / Math.max(1, count);
+	const spread = Math.sqrt(novelty.reduce((x, y) => x + (y - mean) ** 2, 0) / Math.max(1, count)) || 1;
+	return novelty.map((x) => (x - mean) / spread);
 }
 
 /** Mean likeness within the band of each block [from, from + length): index from · (LONGEST + 1) + length. */
@@ -81,14 +89,13 @@ export function findBoundaries(likeness: BarLikeness, detail = 0.5): number[] {
 	const best = new Float64Array(count + 1).fill(Number.NEGATIVE_INFINITY);
 	const came = new Int32Array(count + 1);
 	best[0] = 0;
-	// More detail: a boundary asks for less novelty.
-	const needed = NOVELTY_NEEDED + (0.5 - detail) * 4;
+	const cost = DETAIL * (0.5 - detail);
 	for (let end = 1; end <= count; end++) {
 		for (let length = 1; length <= Math.min(LONGEST, end); length++) {
 			const from = end - length;
 			const like = scores[from * (LONGEST + 1) + length] * unit;
-			const start = from === 0 ? 0 : NOVELTY * (novelty[from] - needed);
-			const value = best[from] + (LIKENESS * like * length) / 8 - LENGTH * lengthPenalty(length) + start;
+			const start = from === 0 ? 0 : NOVELTY * novelty[from] - cost;
+			const value = best[from] + LIKENESS * like - LENGTH * lengthPenalty(length) + start;
 			if (value > best[end]) {
 				best[end] = value;
 				came[end] = from;
