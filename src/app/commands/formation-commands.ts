@@ -1,0 +1,55 @@
+import {
+	addFormation,
+	changeFormation,
+	copyFormation,
+	find,
+	type NewFormation,
+	removeFormation,
+	setOpening,
+} from "../../core/show/index.ts";
+import type { Workbench } from "../workbench.ts";
+import type { FormationCommands } from "./command-types.ts";
+
+/** Edits of formations. */
+export function formationCommands(bench: Workbench): FormationCommands {
+	const { store, notices, ledger, parts } = bench;
+	const called = (id: string): string => {
+		const { show } = store.getState();
+		const name = show === null ? "" : find(show.formations, id)?.name;
+		return name ? `formation ${name}` : "formation";
+	};
+	const add = (name: string, formation: NewFormation): string | null => {
+		const id = bench.edit(name, (draft) => addFormation(draft, formation));
+		if (typeof id !== "string") return null;
+		store.setState({ selection: { kind: "formation", id } });
+		return id;
+	};
+	return {
+		addFormation: (formation) => add("Add formation", formation),
+		changeFormation: (id, change) =>
+			bench.edit(`Change ${called(id)}`, (draft) => changeFormation(draft, id, change)) !== null,
+		copyFormation: (id) => {
+			const copy = bench.edit(`Copy ${called(id)}`, (draft) => copyFormation(draft, id));
+			return typeof copy === "string" ? copy : null;
+		},
+		removeFormation: (id) => bench.edit(`Remove ${called(id)}`, (draft) => removeFormation(draft, id)) !== null,
+		setOpening: (id) => bench.edit("Choose the opening", (draft) => setOpening(draft, id)) !== null,
+		addFormationFrom: async (file) => {
+			if (!bench.mayEdit()) return null;
+			try {
+				const text = await file.text();
+				const { fleet } = store.getState().show!;
+				const shape = await ledger.run(
+					`Reading ${file.name}`,
+					(signal) => parts.workers.run("readShape", { name: file.name, text, count: fleet.count }, { signal }),
+					{ quiet: true },
+				);
+				const name = file.name.replace(/\.[^.]*$/, "");
+				return add(`Add formation ${name}`, { name, ...shape });
+			} catch (error) {
+				notices.sayError(error);
+				return null;
+			}
+		},
+	};
+}

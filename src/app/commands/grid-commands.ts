@@ -1,0 +1,67 @@
+import {
+	createBeatMap,
+	doubleBeats,
+	halveBeats,
+	joinSections,
+	moveBeat,
+	moveSectionStart,
+	renameSection,
+	setGrid,
+	setMetre,
+	setSectionLetter,
+	setSections,
+	shiftBars,
+	shiftBeats,
+	splitSection,
+} from "../../core/show/index.ts";
+import { gridOf, sectionsOf } from "../heard-grid.ts";
+import type { Workbench } from "../workbench.ts";
+import type { GridCommands } from "./command-types.ts";
+
+/** Edits of the beat grid and of sections. */
+export function gridCommands(bench: Workbench): GridCommands {
+	const { store, notices } = bench;
+	return {
+		shiftBeats: (seconds) => bench.edit("Shift the beats", (draft) => shiftBeats(draft, seconds)) !== null,
+		shiftBars: (beats) => bench.edit("Shift the bars", (draft) => shiftBars(draft, beats)) !== null,
+		setDownbeat: (beat) => {
+			const { show } = store.getState();
+			if (show === null) return bench.mayEdit();
+			const beatMap = createBeatMap(show.grid);
+			const inBar = Math.round(beatMap.barAt(beat).beat) - 1;
+			// The shorter way round, so that bar numbers move as little as they can.
+			const metre = beatMap.beatsPerBarAt(beat);
+			const shift = inBar > metre / 2 ? inBar - metre : inBar;
+			return bench.edit("Set the downbeat", (draft) => shiftBars(draft, shift)) !== null;
+		},
+		doubleBeats: () => bench.edit("Double the beats", doubleBeats) !== null,
+		halveBeats: () => bench.edit("Halve the beats", halveBeats) !== null,
+		moveBeat: (beat, seconds) => bench.edit("Move a beat", (draft) => moveBeat(draft, beat, seconds)) !== null,
+		setMetre: (fromBeat, beatsPerBar, until) =>
+			bench.edit("Set the metre", (draft) => setMetre(draft, fromBeat, beatsPerBar, until)) !== null,
+		takeAnalysedGrid: () => {
+			const { analysis } = store.getState();
+			if (analysis === null) {
+				notices.say("caution", "Nothing has been heard yet: open the soundtrack first.");
+				return false;
+			}
+			return (
+				bench.edit("Take the grid as heard", (draft) => {
+					setGrid(draft, gridOf(analysis));
+					setSections(draft, sectionsOf(analysis));
+				}) !== null
+			);
+		},
+		setSections: (sections) => bench.edit("Change the sections", (draft) => setSections(draft, sections)) !== null,
+		renameSection: (id, name) => bench.edit("Name a section", (draft) => renameSection(draft, id, name)) !== null,
+		setSectionLetter: (id, letter) =>
+			bench.edit("Set a section's letter", (draft) => setSectionLetter(draft, id, letter)) !== null,
+		moveSectionStart: (id, beat) =>
+			bench.edit("Move a section's start", (draft) => moveSectionStart(draft, id, beat)) !== null,
+		splitSection: (id, beat) => {
+			const made = bench.edit("Split a section", (draft) => splitSection(draft, id, beat));
+			return typeof made === "string" ? made : null;
+		},
+		joinSections: (id) => bench.edit("Join sections", (draft) => joinSections(draft, id)) !== null,
+	};
+}
