@@ -1,1 +1,1 @@
-export {};
+export { type RoughCut, type RoughCutOptions, roughCut } from "./rough-cut.ts";

@@ -1,0 +1,67 @@
+import type { TransitionCheck } from "../flight/index.ts";
+import type { BeatMap, Formation } from "../show/index.ts";
+import { breathe } from "./repertoire.ts";
+
+/** The picture that stands from `at` on, and the transition that brings it there. */
+export interface Turn {
+	/** Arrival, beats: a downbeat. */
+	readonly at: number;
+	/** Of the transition, beats. */
+	readonly length: number;
+	readonly formation: Formation;
+	/** How often its figure was given up for a nearer one. */
+	readonly fallback: number;
+}
+
+/** Share of the time that stays in hand, so that no verdict is tight. */
+const SPARE = 0.14;
+/** Shortest hold between an arrival and the next departure, beats. */
+const HOLD = 2;
+
+/**
+ * Lengths set by what each transition needs; where the music gives no time, a nearer figure; where even that is too
+ * far, the turn goes.
+ * @param checks in the order of turns 1 … (turn 0 is the opening)
+ * @param last no more fallbacks are tried: what doesn't fly goes
+ * @returns null when nothing has to change
+ */
+export function fitTransitions(
+	turns: readonly Turn[],
+	checks: readonly TransitionCheck[],
+	beatMap: BeatMap,
+	last: boolean,
+): Turn[] | null {
+	const fitted: Turn[] = [turns[0]];
+	let changed = false;
+	for (let i = 1; i < turns.length; i++) {
+		const turn = turns[i];
+		const check = checks[i - 1];
+		const before = fitted[fitted.length - 1];
+		const window = turn.at - before.at - (fitted.length > 1 ? HOLD : 0);
+		const length = check.needed === null ? null : lengthFor(check.needed, turn.at, beatMap);
+		const spatial = check.verdicts.includes("too-close") || check.verdicts.includes("out-of-venue");
+		if (length !== null && !spatial && length <= window) {
+			changed ||= Math.abs(length - turn.length) > 1e-9;
+			fitted.push({ ...turn, length });
+			continue;
+		}
+		changed = true;
+		if (last || turn.fallback >= 2) continue;
+		const nearer = breathe(turns[i - 1].formation, turn.fallback + 1);
+		fitted.push({
+			...turn,
+			formation: nearer,
+			length: Math.max(1, Math.min(turn.length, window)),
+			fallback: turn.fallback + 1,
+		});
+	}
+	return changed ? fitted : null;
+}
+
+/** Whole beats that hold `needed` seconds before `at`, some in hand; at least four, unless the music is slow. */
+function lengthFor(needed: number, at: number, beatMap: BeatMap): number {
+	const wanted = needed * (1 + SPARE) + 0.05;
+	let length = 1;
+	while (beatMap.secondsAt(at) - beatMap.secondsAt(at - length) < Math.max(wanted, 2)) length++;
+	return length;
+}

@@ -1,0 +1,176 @@
+import { type FlownShow, flyShow, type LegProblem, type Plan, type ProofCache, planLeg } from "../flight/index.ts";
+import { fleetSlotsOf, takeoffSlots } from "../formation/index.ts";
+import { compileLight, findFlashes } from "../light/index.ts";
+import type { Analysis } from "../music/index.ts";
+import {
+	type Cue,
+	createShow,
+	type FleetSlots,
+	type Formation,
+	type Limits,
+	type Show,
+	type Soundtrack,
+	toOrdered,
+	type Venue,
+} from "../show/index.ts";
+import { requireInRange } from "../units/index.ts";
+import { cutLight } from "./cut-light.ts";
+import { fitTransitions, type Turn } from "./fit-transitions.ts";
+import { type MusicPlan, readMusic } from "./read-music.ts";
+import { breathe, chooseFigures, type Figure } from "./repertoire.ts";
+
+export interface RoughCutOptions {
+	readonly drones: number;
+	readonly title?: string;
+	readonly limits?: Partial<Limits>;
+	readonly venue?: Partial<Venue>;
+	/** Another number, another cut of the same music. */
+	readonly seed?: number;
+}
+
+/** The cut and what was found while it was made, so that nobody plans it again. */
+export interface RoughCut extends FlownShow {
+	readonly show: Show;
+	readonly slots: Map<string, FleetSlots>;
+	readonly ground: Float64Array;
+	/** What the designer should know, as sentences. */
+	readonly notes: readonly string[];
+}
+
+/** Rounds of planning, setting lengths by what is needed, and falling back where there is no time. */
+const ROUNDS = 6;
+
+/**
+ * A first set of cues made from the analysis, feasible as it stands, to be worked over by hand: a transition at every
+ * section boundary at least, arriving so that the picture stands on the downbeat; the same letter looks alike;
+ * intensity follows loudness; swells where the music is dense.
+ * @throws StarstaveError for a fleet of none or beyond 20 000, or one that no figure in the venue can hold
+ */
+export function roughCut(
+	analysis: Analysis,
+	soundtrack: Soundtrack,
+	options: RoughCutOptions,
+	onProgress?: (share: number, stage: string) => void,
+): RoughCut {
+	requireInRange("fleet", "The number of drones", options.drones, 1, 20000);
+	const music = readMusic(analysis);
+	const empty = createShow(options.drones, options.title ?? "");
+	const fleet = { ...empty.fleet, limits: { ...empty.fleet.limits, ...options.limits } };
+	const venue = { ...empty.venue, ...options.venue };
+	const figures = chooseFigures(fleet, venue, options.seed ?? 1);
+	const base: Show = { ...empty, soundtrack, fleet, venue, grid: music.grid, sections: music.sections };
+	let turns = layTurns(music, figures);
+
+	const plans = new Map<string, Plan>();
+	const proofs: ProofCache = new Map();
+	let planned = 0;
+	const planOf = (problem: LegProblem): Plan => {
+		planned++;
+		onProgress?.(Math.min(0.95, planned / (turns.length + 6)), "Planning transitions");
+		return planLeg(problem);
+	};
+	const notes: string[] = [];
+	for (let round = 0; ; round++) {
+		const show = assemble(base, music, turns, analysis);
+		const slots = fleetSlotsOf(show);
+		const ground = takeoffSlots(show);
+		const flown = flyShow(show, slots, ground, planOf, plans, proofs);
+		for (const [key, plan] of flown.plans) plans.set(key, plan);
+		const fitted = fitTransitions(turns, flown.check.transitions, music.beatMap, round >= ROUNDS - 2);
+		if (fitted === null || round >= ROUNDS) {
+			if (music.grid.beats.length < 2)
+				notes.push("No beat was found, so the cut has no transitions: put them in by hand.");
+			onProgress?.(1, "Planning transitions");
+			return { show: calmFlashes(show, flown, slots, analysis), slots, ground, notes, ...flown };
+		}
+		turns = fitted;
+	}
+}
+
+/** Section after section its figure; where the same would stand twice running, and in the midst of long ones, the other of its pair. */
+function layTurns(music: MusicPlan, figures: readonly Figure[]): Turn[] {
+	const pairs = pairFigures(music.energies, figures);
+	const turns: Turn[] = [];
+	let standing: Formation | null = null;
+	let wider = 0;
+	const turnTo = (at: number, pick: readonly Formation[]) => {
+		let next = pick.find((formation) => formation.id !== standing?.id) ?? pick[0];
+		// A fleet of one has one figure: it still moves, by growing.
+		if (standing !== null && next.id === standing.id) next = breathe(pick[0], (wider++ % 2) + 1);
+		turns.push({ at, length: 8, formation: next, fallback: 0 });
+		standing = next;
+	};
+	for (const section of music.sections) {
+		const pair = pairs.get(section.letter) ?? [figures[0].formation];
+		turnTo(section.from, pair);
+		for (const at of music.turnsOf(section)) turnTo(at, [...pair].reverse());
+	}
+	if (turns.length === 0) turnTo(0, [figures[0].formation]);
+	return turns;
+}
+
+/** Two figures a letter, near to its energy, no figure for two letters while there are enough. */
+function pairFigures(energies: ReadonlyMap<string, number>, figures: readonly Figure[]): Map<string, Formation[]> {
+	const pairs = new Map<string, Formation[]>();
+	const free = new Set(figures);
+	const take = (energy: number, not: Figure | null): Figure => {
+		const pool = [...free].filter((figure) => figure !== not);
+		const from = pool.length > 0 ? pool : figures.filter((figure) => figure !== not);
+		const best = (from.length > 0 ? from : figures).reduce((a, b) =>
+			Math.abs(b.energy - energy) < Math.abs(a.energy - energy) ? b : a,
+		);
+		free.delete(best);
+		return best;
+	};
+	const firsts = new Map([...energies].map(([letter, energy]) => [letter, take(energy, null)]));
+	for (const [letter, energy] of energies) {
+		const first = firsts.get(letter) ?? figures[0];
+		pairs.set(letter, [first.formation, take(energy, first).formation]);
+	}
+	return pairs;
+}
+
+/** The show that the turns make: the first is the opening, in which the fleet waits dark. */
+function assemble(base: Show, music: MusicPlan, turns: readonly Turn[], analysis: Analysis): Show {
+	const [opening, ...rest] = turns;
+	const formations = new Map<string, Formation>();
+	for (const turn of turns) formations.set(turn.formation.id, turn.formation);
+	const timed = [
+		...rest.map((turn) => ({
+			...PLAIN,
+			kind: "transition" as const,
+			at: turn.at - turn.length,
+			length: turn.length,
+			formation: turn.formation.id,
+			timeLaw: "s-curve" as const,
+			light: "keep" as const,
+			name: `to ${turn.formation.name}`,
+		})),
+		...cutLight(music, analysis).map((cue) => ({ ...PLAIN, ...cue })),
+	];
+	timed.sort((a, b) => a.at - b.at);
+	const cues = timed.map((cue, i) => ({ ...cue, id: `c${i + 1}`, number: String(i + 1) }) as Cue);
+	return {
+		...base,
+		opening: opening.formation.id,
+		formations: toOrdered([...formations.values()]),
+		cues: toOrdered(cues),
+	};
+}
+
+const PLAIN = { group: "all", called: false, name: "", note: "", length: 0 };
+
+/** Swells give way to gradients in a show that would flash; what is left of flashes is told by the check of light. */
+function calmFlashes(show: Show, flown: FlownShow, slots: ReadonlyMap<string, FleetSlots>, analysis: Analysis): Show {
+	const program = compileLight(show, flown.flight.stays, slots, analysis.curves);
+	if (findFlashes(program, 0, analysis.duration).length === 0) return show;
+	const byId = Object.fromEntries(
+		Object.entries(show.cues.byId).map(([id, cue]) => [
+			id,
+			cue.kind === "colour" && cue.paint.kind === "swell"
+				? { ...cue, paint: { kind: "flat" as const, colour: cue.paint.colour } }
+				: cue,
+		]),
+	);
+	return { ...show, cues: { ...show.cues, byId } };
+}
