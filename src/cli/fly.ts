@@ -1,8 +1,7 @@
 import { flyShow, type LegProblem, type Plan, planLeg, type ShowCheck, type ShowFlight } from "../core/flight/index.ts";
 import { fleetSlotsOf, takeoffSlots } from "../core/formation/index.ts";
 import { compileLight, type Flash, findFlashes, type LightProgram } from "../core/light/index.ts";
-import type { Analysis } from "../core/music/index.ts";
-import { createBeatMap, endOfShow, type Show, toList } from "../core/show/index.ts";
+import { type Curve, createBeatMap, endOfShow, type Show, toList } from "../core/show/index.ts";
 import { StarstaveError } from "../core/units/index.ts";
 import { type Progress, secondsSince } from "./progress.ts";
 
@@ -54,15 +53,11 @@ function requireFleet(show: Show): void {
 	}
 }
 
-function followsMusic(show: Show): boolean {
-	return toList(show.cues).some((cue) => cue.kind === "intensity" && typeof cue.level !== "number");
-}
-
 /**
  * Plans every leg, proves it, and compiles the light.
- * @param analysis what is heard in the show's soundtrack, or null where the audio is not at hand
+ * @param curves of the show's soundtrack, or null where the audio is not at hand
  */
-export function flyWhole(show: Show, analysis: Analysis | null, progress: Progress): Flown {
+export function flyWhole(show: Show, curves: readonly Curve[] | null, progress: Progress): Flown {
 	requireFleet(show);
 	const slots = fleetSlotsOf(show);
 	const ground = takeoffSlots(show);
@@ -85,11 +80,11 @@ export function flyWhole(show: Show, analysis: Analysis | null, progress: Progre
 		proofs.seconds.delete(key);
 	}
 	progress.tell(0.95, "light");
-	const light = compileLight(show, flight.stays, slots, analysis?.curves ?? []);
+	const light = compileLight(show, flight.stays, slots, curves ?? []);
 	const end = endOfShow(show, createBeatMap(show.grid));
 	const flashes = findFlashes(light, Math.min(0, flight.begins), Math.max(end, flight.ends));
 	const notes: string[] = [];
-	if (analysis === null && followsMusic(show)) {
+	if (curves === null) {
 		notes.push("The soundtrack was not at hand, so flashes of what follows the music can't be judged.");
 	}
 	return { show, flight, check, light, flashes, notes, timing: { plan, prove } };

@@ -87,4 +87,8 @@ async function main(words: readonly string[]): Promise<number> {
 	}
 }
 
+// Whoever reads may stop before the end (`| head`): that is no fault.
+process.stdout.on("error", (error: NodeJS.ErrnoException) => {
+	if (error.code !== "EPIPE") throw error;
+});
 process.exitCode = await main(process.argv.slice(2));

@@ -3,7 +3,7 @@ import { basename, dirname, join } from "node:path";
 import { decodeAudio, type Samples } from "../core/decode/index.ts";
 import { sha256Hex } from "../core/maths/index.ts";
 import { type Analysis, analyse } from "../core/music/index.ts";
-import type { Show, Soundtrack } from "../core/show/index.ts";
+import { type Curve, type Show, type Soundtrack, toList } from "../core/show/index.ts";
 import { StarstaveError } from "../core/units/index.ts";
 import { readBytes } from "./files.ts";
 import { cpuSince, type Progress, secondsSince } from "./progress.ts";
@@ -84,19 +84,29 @@ function readOwnTrack(show: Show, showPath: string, packed: Packed, named: strin
 	return found;
 }
 
-/** The show's own soundtrack with everything heard in it; null where it is not at hand. */
-export async function hearOwnTrack(
+/** Whether anything in the show follows a curve of the music. */
+export function followsMusic(show: Show): boolean {
+	return toList(show.cues).some((cue) => cue.kind === "intensity" && typeof cue.level !== "number");
+}
+
+/**
+ * The curves that the show's light follows. The audio is heard only where something follows it, but what is there is
+ * always held against the show.
+ * @returns null where the audio is not at hand
+ */
+export async function hearCurves(
 	show: Show,
 	showPath: string,
 	packed: Packed,
 	named: string | undefined,
 	progress: Progress,
-): Promise<Track | null> {
+): Promise<readonly Curve[] | null> {
 	const found = readOwnTrack(show, showPath, packed, named);
-	return found === null ? null : hearTrack(found.bytes, found.name, progress);
+	if (!followsMusic(show)) return [];
+	return found === null ? null : (await hearTrack(found.bytes, found.name, progress)).analysis.curves;
 }
 
-/** Likewise its samples alone. */
+/** Samples of the show's own soundtrack; null where it is not at hand. */
 export async function decodeOwnTrack(
 	show: Show,
 	showPath: string,

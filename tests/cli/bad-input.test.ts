@@ -1,4 +1,4 @@
-import { mkdirSync, readdirSync, readFileSync, writeFileSync } from "node:fs";
+import { mkdirSync, readdirSync, readFileSync, statSync, writeFileSync } from "node:fs";
 import { beforeAll, describe, expect, it } from "vitest";
 import { type SampleFile, sampleText } from "../core/show/sample-show.ts";
 import { makeTrack, writeWav } from "./make-track.ts";
@@ -27,7 +27,7 @@ function refusal(...words: readonly string[]): string {
 }
 
 function listing(): string[] {
-	return readdirSync(folder).map((name) => `${name} ${readFileSync(path(name)).length}`);
+	return readdirSync(folder).map((name) => `${name} ${statSync(path(name)).size}`);
 }
 
 describe("a soundtrack that can't be used says why", () => {
@@ -56,8 +56,34 @@ describe("a soundtrack that can't be used says why", () => {
 		const heard = JSON.parse(result.stdout);
 		expect(heard.beats).toEqual([]);
 		expect(heard.confidence).toBe(0);
-		expect(heard.loudness.integrated).toBeNull();
+		// Nothing passes the absolute gate of BS.1770.
+		expect(heard.loudness.integrated).toBeLessThan(-70);
 		expect(heard.notes.join(" ")).toMatch(/beat|silent/);
+	});
+
+	it("takes an MP3 that was cut off, and says so", () => {
+		const fixture = new URL("../core/decode/fixtures/pulses.mp3", import.meta.url);
+		const whole = readFileSync(fixture);
+		put("half.mp3", whole.subarray(0, Math.floor(whole.length / 2)));
+		const result = run("analyse", "half.mp3", "--json", "-");
+		expect(result.code).toBe(0);
+		const heard = JSON.parse(result.stdout);
+		expect(heard.soundtrack.duration).toBeGreaterThan(0.5);
+		expect(heard.notes.join(" ")).toMatch(/cut off|ends|truncated|shorter/);
+	});
+
+	it("takes ten minutes of noise, and is not sure of any beat in it", () => {
+		let state = 1;
+		const noise = Float32Array.from({ length: 600 * 8000 }, () => {
+			state = (Math.imul(state, 1664525) + 1013904223) | 0;
+			return state / 2 ** 32;
+		});
+		put("noise.wav", writeWav([noise], 8000));
+		const result = run("analyse", "noise.wav", "--json", "-");
+		expect(result.code).toBe(0);
+		const heard = JSON.parse(result.stdout);
+		expect(heard.soundtrack.duration).toBe(600);
+		expect(heard.confidence).toBeLessThan(0.5);
 	});
 
 	it("takes 8 kHz mono and six channels, and says so", () => {
@@ -69,7 +95,7 @@ describe("a soundtrack that can't be used says why", () => {
 		expect(low.notes.join(" ")).toMatch(/8 kHz|8000 Hz/);
 		const six = JSON.parse(run("analyse", "six.wav", "--json", "-").stdout);
 		expect(six.soundtrack.channels).toBe(6);
-		expect(six.notes.join(" ")).toMatch(/six channels|6 channels/);
+		expect(six.notes.join(" ")).toMatch(/six channels/i);
 	});
 });
 

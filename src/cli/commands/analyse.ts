@@ -33,6 +33,9 @@ export function describeTrack({ soundtrack, analysis, samples, timing }: Track) 
 	};
 }
 
+/** LUFS: the absolute gate of ITU-R BS.1770; where nothing passes it there is no loudness to speak of. */
+const GATE = -70;
+
 function clock(seconds: number): string {
 	const whole = Math.round(seconds);
 	return `${Math.floor(whole / 60)}:${String(whole % 60).padStart(2, "0")}`;
@@ -48,7 +51,7 @@ export async function runAnalyse(given: Arguments, progress: Progress): Promise<
 		analysis.beats.length === 0
 			? "No beat was found."
 			: `${analysis.tempo.bpm.toFixed(1)} beats a minute, ${analysis.beats.length} beats, ${analysis.bars.length} bars, confidence ${analysis.confidence.toFixed(2)}`,
-		Number.isFinite(integrated) ? `Loudness ${integrated.toFixed(1)} LUFS` : "The soundtrack is silent.",
+		integrated > GATE ? `Loudness ${integrated.toFixed(1)} LUFS` : "The soundtrack is silent.",
 		...analysis.sections.map(({ start, end, letter }) => `Section ${letter}  ${clock(start)} to ${clock(end)}`),
 		...json.notes,
 	];

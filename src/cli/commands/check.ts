@@ -1,11 +1,12 @@
 import type { TransitionCheck } from "../../core/flight/index.ts";
+import { flashSentence } from "../../core/handoff/index.ts";
 import { find, type Show } from "../../core/show/index.ts";
 import type { Answer } from "../answer.ts";
 import type { Arguments, CommandShape } from "../arguments.ts";
 import { type Flown, flyWhole } from "../fly.ts";
 import type { Progress } from "../progress.ts";
 import { readShowFile } from "../shows.ts";
-import { hearOwnTrack } from "../tracks.ts";
+import { hearCurves } from "../tracks.ts";
 
 export const checkShape: CommandShape = {
 	name: "check",
@@ -45,7 +46,7 @@ export function checkLines(show: Show, flown: Flown): string[] {
 		lines.push(`Formation ${name}: ${verdicts.join(" ")}, smallest distance ${gap.toFixed(3)} m`);
 	}
 	lines.push(`Endurance: ${airborne.toFixed(0)} s from motor start, limit ${limit.toFixed(0)} s`);
-	for (const flash of flashes) lines.push(`Warning: ${flash.sentence}`);
+	for (const flash of flashes) lines.push(`Warning: ${flashSentence(flash)}`);
 	for (const note of [...check.notes, ...notes]) lines.push(note);
 	lines.push(check.flies ? "The show flies." : "The show can't be flown as it stands.");
 	return lines;
@@ -54,7 +55,7 @@ export function checkLines(show: Show, flown: Flown): string[] {
 export async function runCheck(given: Arguments, progress: Progress): Promise<Answer> {
 	const [path] = given.operands;
 	const { show, soundtrack } = readShowFile(path);
-	const track = await hearOwnTrack(show, path, soundtrack, given.values.get("--soundtrack"), progress);
-	const flown = flyWhole(show, track?.analysis ?? null, progress);
+	const curves = await hearCurves(show, path, soundtrack, given.values.get("--soundtrack"), progress);
+	const flown = flyWhole(show, curves, progress);
 	return { code: flown.check.flies ? 0 : 2, json: describeCheck(flown), lines: checkLines(show, flown) };
 }

@@ -13,7 +13,7 @@ import { requireEmptyFolder, writeFolder } from "../files.ts";
 import { flyWhole } from "../fly.ts";
 import type { Progress } from "../progress.ts";
 import { readShowFile } from "../shows.ts";
-import { hearOwnTrack } from "../tracks.ts";
+import { hearCurves } from "../tracks.ts";
 
 export const handoffShape: CommandShape = {
 	name: "handoff",
@@ -52,8 +52,8 @@ export async function runHandoff(given: Arguments, progress: Progress): Promise<
 	const draft = given.switches.has("--draft");
 	requireEmptyFolder(out);
 	const { show, soundtrack } = readShowFile(path);
-	const track = await hearOwnTrack(show, path, soundtrack, given.values.get("--soundtrack"), progress);
-	const flown = flyWhole(show, track?.analysis ?? null, progress);
+	const curves = await hearCurves(show, path, soundtrack, given.values.get("--soundtrack"), progress);
+	const flown = flyWhole(show, curves, progress);
 	if (!flown.check.flies && !draft) {
 		const json = { flies: false, written: false, files: [], revision: null };
 		const lines = [

@@ -1,9 +1,10 @@
 import { strToU8 } from "fflate";
 import { dronePositions, type ShowCheck, type ShowFlight } from "../flight/index.ts";
-import { findFlashes, type LightProgram, lightAt } from "../light/index.ts";
+import { type Flash, findFlashes, type LightProgram, lightAt } from "../light/index.ts";
 import { createBeatMap, endOfShow, type Show, writeShow } from "../show/index.ts";
 import { CAUTIONS } from "./cautions.ts";
 import { cueListCsv, cueListJson, listCues } from "./cue-list.ts";
+import { flashSentence } from "./flash-sentence.ts";
 import { type PathRates, type TableFile, zipFlightPaths } from "./flight-paths.ts";
 import { type HandoffFile, writeManifest } from "./manifest.ts";
 import { proveRate } from "./prove-rate.ts";
@@ -17,6 +18,8 @@ export interface HandoffInput {
 	readonly flight: ShowFlight;
 	readonly check: ShowCheck;
 	readonly light: LightProgram;
+	/** What flashes too often; looked for where it isn't given. */
+	readonly flashes?: readonly Flash[];
 }
 
 export interface HandoffOptions {
@@ -81,9 +84,7 @@ export function handOff(
 		files.push(...zipped);
 	}
 	onProgress(0.95, "writing the report");
-	const flashes = findFlashes(light, Math.min(0, flight.begins), Math.max(end, flight.ends)).map(
-		({ sentence }) => sentence,
-	);
+	const flashes = input.flashes ?? findFlashes(light, Math.min(0, flight.begins), Math.max(end, flight.ends));
 	const report = writeReport({
 		show,
 		check,
@@ -93,7 +94,7 @@ export function handOff(
 		revision,
 		draft: rates === null,
 		timecode,
-		flashes,
+		flashes: flashes.map(flashSentence),
 		notes,
 		rates,
 	});

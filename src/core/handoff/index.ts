@@ -1,5 +1,6 @@
 export { CAUTIONS } from "./cautions.ts";
 export { type CueLine, cueListCsv, cueListJson, cueValues, listCues } from "./cue-list.ts";
+export { flashSentence } from "./flash-sentence.ts";
 export type { PathRates, TableFile } from "./flight-paths.ts";
 export { type Handoff, type HandoffInput, type HandoffOptions, handOff } from "./hand-off.ts";
 export { type HandoffFile, type ListedFile, listFile } from "./manifest.ts";
