@@ -9,8 +9,8 @@ export interface Turn {
 	/** Of the transition, beats. */
 	readonly length: number;
 	readonly formation: Formation;
-	/** How often its figure was given up for a nearer one. */
-	readonly fallback: number;
+	/** True once its figure was given up for a nearer one. */
+	readonly nearer: boolean;
 }
 
 /** Share of the time that stays in hand, so that no verdict is tight. */
@@ -19,17 +19,15 @@ const SPARE = 0.14;
 const HOLD = 2;
 
 /**
- * Lengths set by what each transition needs; where the music gives no time, a nearer figure; where even that is too
- * far, the turn goes.
+ * Lengths set by what each transition needs; where the music gives no time, the picture that stands grows or shrinks a
+ * little instead; where even that is too much, the turn goes.
  * @param checks in the order of turns 1 … (turn 0 is the opening)
- * @param last no more fallbacks are tried: what doesn't fly goes
  * @returns null when nothing has to change
  */
 export function fitTransitions(
 	turns: readonly Turn[],
 	checks: readonly TransitionCheck[],
 	beatMap: BeatMap,
-	last: boolean,
 ): Turn[] | null {
 	const fitted: Turn[] = [turns[0]];
 	let changed = false;
@@ -46,14 +44,9 @@ export function fitTransitions(
 			continue;
 		}
 		changed = true;
-		if (last || turn.fallback >= 2) continue;
-		const nearer = breathe(turns[i - 1].formation, turn.fallback + 1);
-		fitted.push({
-			...turn,
-			formation: nearer,
-			length: Math.max(1, Math.min(turn.length, window)),
-			fallback: turn.fallback + 1,
-		});
+		if (turn.nearer) continue;
+		const length0 = Math.max(1, Math.min(turn.length, window));
+		fitted.push({ ...turn, formation: breathe(before.formation), length: length0, nearer: true });
 	}
 	return changed ? fitted : null;
 }

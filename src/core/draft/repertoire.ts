@@ -149,13 +149,15 @@ function centreHeights(figures: readonly Figure[], venue: Venue): Figure[] {
 	});
 }
 
-/** A figure a little larger: what a fleet can always do in a few beats. */
-export function breathe(formation: Formation, times: number): Formation {
-	const scale = formation.place.scale * 1.08 ** times;
+const WIDER = "-wider";
+
+/** The same figure a little larger, or back at its size: what a fleet can always do in a few beats. */
+export function breathe(formation: Formation): Formation {
+	const wide = formation.id.endsWith(WIDER);
 	return {
 		...formation,
-		id: `${formation.id}-wider-${times}`,
-		name: `${formation.name}, wider`,
-		place: { ...formation.place, scale },
+		id: wide ? formation.id.slice(0, -WIDER.length) : formation.id + WIDER,
+		name: wide ? formation.name.replace(/, wider$/, "") : `${formation.name}, wider`,
+		place: { ...formation.place, scale: wide ? 1 : 1.12 },
 	};
 }

@@ -37,8 +37,8 @@ export interface RoughCut extends FlownShow {
 	readonly notes: readonly string[];
 }
 
-/** Rounds of planning, setting lengths by what is needed, and falling back where there is no time. */
-const ROUNDS = 6;
+/** Rounds of planning and fitting. Each takes a turn away or a figure nearer, so few are needed; this is the guard. */
+const ROUNDS = 24;
 
 /**
  * A first set of cues made from the analysis, feasible as it stands, to be worked over by hand: a transition at every
@@ -76,7 +76,7 @@ export function roughCut(
 		const ground = takeoffSlots(show);
 		const flown = flyShow(show, slots, ground, planOf, plans, proofs);
 		for (const [key, plan] of flown.plans) plans.set(key, plan);
-		const fitted = fitTransitions(turns, flown.check.transitions, music.beatMap, round >= ROUNDS - 2);
+		const fitted = fitTransitions(turns, flown.check.transitions, music.beatMap);
 		if (fitted === null || round >= ROUNDS) {
 			if (music.grid.beats.length < 2)
 				notes.push("No beat was found, so the cut has no transitions: put them in by hand.");
@@ -92,12 +92,11 @@ function layTurns(music: MusicPlan, figures: readonly Figure[]): Turn[] {
 	const pairs = pairFigures(music.energies, figures);
 	const turns: Turn[] = [];
 	let standing: Formation | null = null;
-	let wider = 0;
 	const turnTo = (at: number, pick: readonly Formation[]) => {
 		let next = pick.find((formation) => formation.id !== standing?.id) ?? pick[0];
 		// A fleet of one has one figure: it still moves, by growing.
-		if (standing !== null && next.id === standing.id) next = breathe(pick[0], (wider++ % 2) + 1);
-		turns.push({ at, length: 8, formation: next, fallback: 0 });
+		if (standing !== null && next.id === standing.id) next = breathe(pick[0]);
+		turns.push({ at, length: 8, formation: next, nearer: false });
 		standing = next;
 	};
 	for (const section of music.sections) {
