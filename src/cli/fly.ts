@@ -56,8 +56,14 @@ function requireFleet(show: Show): void {
 /**
  * Plans every leg, proves it, and compiles the light.
  * @param curves of the show's soundtrack, or null where the audio is not at hand
+ * @param known plans that need not be made again; their time to plan counts as none
  */
-export function flyWhole(show: Show, curves: readonly Curve[] | null, progress: Progress): Flown {
+export function flyWhole(
+	show: Show,
+	curves: readonly Curve[] | null,
+	progress: Progress,
+	known: ReadonlyMap<string, Plan> = new Map(),
+): Flown {
 	requireFleet(show);
 	const slots = fleetSlotsOf(show);
 	const ground = takeoffSlots(show);
@@ -72,9 +78,10 @@ export function flyWhole(show: Show, curves: readonly Curve[] | null, progress: 
 		plan[problem.id] = (plan[problem.id] ?? 0) + secondsSince(start);
 		return made;
 	};
-	const { flight, check, problems } = flyShow(show, slots, ground, planOf, new Map(), proofs);
+	const { flight, check, problems } = flyShow(show, slots, ground, planOf, known, proofs);
 	const prove: Record<string, number> = {};
 	for (const { id, key } of problems) {
+		plan[id] ??= 0;
 		const seconds = proofs.seconds.get(key);
 		if (seconds !== undefined) prove[id] = (prove[id] ?? 0) + seconds;
 		proofs.seconds.delete(key);

@@ -36,17 +36,25 @@ export async function runDraft(given: Arguments, progress: Progress): Promise<An
 	requireShowPlace(out, given.switches.has("--force"));
 	const track = await hearFile(path, progress);
 	const title = given.values.get("--title") ?? track.soundtrack.file.replace(/\.[^.]+$/, "");
-	const { show } = roughCut(track.analysis, track.soundtrack, { drones, title, seed }, (share, stage) =>
+	const cut = roughCut(track.analysis, track.soundtrack, { drones, title, seed }, (share, stage) =>
 		progress.tell(share, stage),
 	);
+	const { show } = cut;
 	// What was cut is checked from the show alone, as `check` would from the file.
-	const flown = flyWhole(show, track.analysis.curves, progress);
+	const flown = flyWhole(show, track.analysis.curves, progress, cut.plans);
 	writeShowFile(out, show, { name: track.soundtrack.file, bytes: track.bytes });
 	const cues = { colour: 0, intensity: 0, transition: 0 };
 	for (const cue of toList(show.cues)) cues[cue.kind] += 1;
-	const json = { cues, check: describeCheck(flown), soundtrack: track.soundtrack, timing: track.timing };
+	const json = {
+		cues,
+		check: describeCheck(flown),
+		notes: cut.notes,
+		soundtrack: track.soundtrack,
+		timing: track.timing,
+	};
 	const lines = [
 		`${out}: ${cues.transition} transitions, ${cues.colour} colour cues, ${cues.intensity} intensity cues`,
+		...cut.notes,
 		...checkLines(show, flown),
 	];
 	return { code: flown.check.flies ? 0 : 2, json, lines };
