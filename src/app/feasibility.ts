@@ -1,5 +1,5 @@
 import type { StoreApi } from "zustand/vanilla";
-import { assembleFlight, type LegProblem, type Plan, type ShowCheck } from "../core/flight/index.ts";
+import type { LegProblem, Plan, ShowCheck, ShowFlight } from "../core/flight/index.ts";
 import { compileLight } from "../core/light/index.ts";
 import { createBeatMap, endOfShow, type FleetSlots, type Show } from "../core/show/index.ts";
 import type { Player } from "../platform/player.ts";
@@ -7,6 +7,7 @@ import type { WorkerClient } from "../workers/index.ts";
 import type { JobLedger } from "./job-ledger.ts";
 import type { Keeper } from "./keeper.ts";
 import { basisOf, changedLegs, type LegBasis, sameBasis } from "./leg-basis.ts";
+import { moveLegs } from "./move-legs.ts";
 import { isCancelled, type Notices } from "./notices.ts";
 import { createPlanCache } from "./plan-cache.ts";
 import { redateCheck } from "./redate-check.ts";
@@ -47,6 +48,15 @@ interface Laid {
 	readonly problems: readonly LegProblem[];
 }
 
+/** A flight with the show that it was assembled for. */
+interface Assembled {
+	readonly show: Show;
+	readonly basis: LegBasis;
+	readonly flight: ShowFlight;
+	/** Key of each leg's plan. */
+	readonly keys: readonly string[];
+}
+
 /** Milliseconds of quiet before a proof starts. */
 const QUIET = 150;
 const NONE: ReadonlySet<string> = new Set();
@@ -54,6 +64,7 @@ const NONE: ReadonlySet<string> = new Set();
 export function createFeasibility({ store, workers, player, ledger, keeper, notices }: FeasibilityParts): Feasibility {
 	const cache = createPlanCache(workers, keeper);
 	let laid: Laid | null = null;
+	let assembled: Assembled | null = null;
 	/** What the check in the store was made for. */
 	let checked: LegBasis | null = null;
 	/** Rises with every change, so that an answer to an older question is known as such. */
@@ -64,36 +75,37 @@ export function createFeasibility({ store, workers, player, ledger, keeper, noti
 
 	const clear = (): void => {
 		laid = null;
+		assembled = null;
 		checked = null;
 		store.setState({ slots: null, ground: null, flight: null, light: null, check: null, unchecked: NONE });
 	};
 
-	/** Flight and light from known plans, if all are known. @returns whether they were */
-	const assemble = (show: Show): boolean => {
-		if (laid === null || cache.countMissing(laid.problems) > 0 || !sameBasis(laid.basis, basisOf(show))) return false;
-		const { slots, ground } = laid;
-		const flight = assembleFlight(show, slots, ground, new Map(cache.plans));
+	/** Puts a flight into the store, with the light that goes with it. */
+	const put = (show: Show, flight: ShowFlight, slots: ReadonlyMap<string, FleetSlots>): void => {
 		const light = compileLight(show, flight.stays, slots, store.getState().analysis?.curves ?? []);
-		store.setState({ slots, ground, flight, light });
+		store.setState({ slots, ground: flight.ground, flight, light });
 		player.setSpan(Math.min(0, flight.begins), Math.max(endOfShow(show, createBeatMap(show.grid)), flight.ends));
-		return true;
 	};
 
 	/** All that can be said without a worker. */
 	const follow = (): void => {
 		turn++;
-		const { show, check } = store.getState();
+		const { show, check, slots } = store.getState();
 		if (show === null) {
 			clear();
 			return;
 		}
 		const basis = basisOf(show);
 		try {
-			assemble(show);
+			if (assembled !== null && slots !== null && sameBasis(assembled.basis, basis)) {
+				const flight = moveLegs(assembled.flight, assembled.show, show);
+				put(show, flight, slots);
+				store.setState({ check: check && redateCheck(check, show, flight) });
+			}
 		} catch (error) {
 			notices.sayError(error, "feasibility");
 		}
-		store.setState({ check: check && redateCheck(check, show), unchecked: changedLegs(checked, basis) });
+		store.setState({ unchecked: changedLegs(checked, basis) });
 		// Planning for formations that have changed again is a waste.
 		if (planning !== null && !sameBasis(planning.basis, basis)) planning.superseded.abort();
 	};
@@ -123,21 +135,31 @@ export function createFeasibility({ store, workers, player, ledger, keeper, noti
 		}
 	};
 
-	const prove = async (show: Show): Promise<ShowCheck> => {
-		const { flight, slots, ground } = store.getState();
-		const plans = new Map(laid!.problems.map(({ key }) => [key, cache.plans.get(key)!]));
-		return ledger.run(
-			"Proving the flight",
-			(signal) => workers.run("check", { show, slots: slots!, flight: flight!, ground: ground!, plans }, { signal }),
-			{ quiet: true },
-		);
+	const assemble = async (show: Show, { basis, slots, ground, problems }: Laid): Promise<Assembled> => {
+		const known = assembled === null ? [] : assembled.keys;
+		const keys = [...problems.map(({ key }) => key), ...known];
+		const plans = new Map(keys.flatMap((key) => (cache.plans.has(key) ? [[key, cache.plans.get(key)!] as const] : [])));
+		const answer = await workers.run("assemble", { show, slots, ground, plans }, { urgent: true });
+		cache.add(answer.plans);
+		const legs = answer.flight.legs.map((leg, index) => ({ ...leg, plan: cache.plans.get(answer.keys[index])! }));
+		return { show, basis, flight: { ...answer.flight, ground, legs }, keys: answer.keys };
 	};
+
+	const prove = (
+		show: Show,
+		flight: ShowFlight,
+		keys: readonly string[],
+		slots: ReadonlyMap<string, FleetSlots>,
+	): Promise<ShowCheck> =>
+		ledger.run("Proving the flight", (signal) => workers.run("check", { show, slots, flight, keys }, { signal }), {
+			quiet: true,
+		});
 
 	/** One round. @returns false where the show changed meanwhile, so that another is due */
 	const round = async (): Promise<boolean> => {
 		const started = turn;
 		const { show } = store.getState();
-		if (show === null || show.opening === null) {
+		if (show === null || show.formations.order.length === 0) {
 			clear();
 			return true;
 		}
@@ -148,12 +170,18 @@ export function createFeasibility({ store, workers, player, ledger, keeper, noti
 		}
 		if (cache.countMissing(laid.problems) > 0 && !(await planLegs(laid))) return false;
 		if (started !== turn) return false;
-		if (!assemble(show)) return false;
+		if (assembled === null || !sameBasis(assembled.basis, laid.basis)) {
+			const next = await assemble(show, laid);
+			if (started !== turn) return false;
+			assembled = next;
+		}
+		const flight = moveLegs(assembled.flight, assembled.show, show);
+		put(show, flight, laid.slots);
 		notices.dismiss("feasibility");
 		await new Promise((resolve) => setTimeout(resolve, QUIET));
 		if (started !== turn) return false;
-		const basis = laid.basis;
-		const check = await prove(show);
+		const { basis } = laid;
+		const check = await prove(show, flight, assembled.keys, laid.slots);
 		if (started !== turn) return false;
 		checked = basis;
 		store.setState({ check, unchecked: NONE });
@@ -181,6 +209,7 @@ export function createFeasibility({ store, workers, player, ledger, keeper, noti
 					retried = true;
 					cache.clear();
 					laid = null;
+					assembled = null;
 					continue;
 				}
 				retried = false;
@@ -205,6 +234,7 @@ export function createFeasibility({ store, workers, player, ledger, keeper, noti
 		again: () => {
 			checked = null;
 			laid = null;
+			assembled = null;
 			follow();
 			start();
 		},

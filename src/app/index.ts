@@ -1,3 +1,4 @@
 export type { Commands, CueDrag, Drag, HandOffChoice } from "./commands/command-types.ts";
-export type { Studio } from "./studio.ts";
+export type { StudioParts } from "./parts.ts";
+export { createStudio, type Studio } from "./studio.ts";
 export type { Job, Notice, Selection, StudioState } from "./studio-state.ts";

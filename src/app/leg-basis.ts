@@ -1,3 +1,4 @@
+import { openingOf } from "../core/flight/index.ts";
 import { createBeatMap, find, type Show, transitionsInTime } from "../core/show/index.ts";
 
 /**
@@ -14,7 +15,7 @@ export interface LegBasis {
 /** The legs of a show in the order of time, launch first and landing last. */
 export function basisOf(show: Show): LegBasis {
 	const legs = new Map<string, readonly unknown[]>();
-	let from: unknown = find(show.formations, show.opening);
+	let from: unknown = find(show.formations, openingOf(show));
 	legs.set("launch", [show.takeoff, from]);
 	for (const cue of transitionsInTime(show, createBeatMap(show.grid))) {
 		const to = find(show.formations, cue.formation);
@@ -22,7 +23,7 @@ export function basisOf(show: Show): LegBasis {
 		from = to;
 	}
 	legs.set("landing", [from, show.takeoff]);
-	return { common: [show.fleet, show.venue, show.takeoff, show.opening, show.formations], legs };
+	return { common: [show.fleet, show.venue, show.takeoff, openingOf(show), show.formations], legs };
 }
 
 const same = (a: readonly unknown[], b: readonly unknown[]): boolean =>

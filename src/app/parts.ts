@@ -13,7 +13,7 @@ export interface StudioParts {
 	readonly openAutosave: () => Promise<Autosave>;
 	readonly takeLease: () => Promise<Lease>;
 	/** The demo show with its soundtrack, each as a file; null where none is shipped. */
-	readonly fetchDemo: () => Promise<{ readonly show: NamedBytes; readonly soundtrack: NamedBytes | null } | null>;
+	readonly fetchDemo: (() => Promise<{ readonly show: NamedBytes; readonly soundtrack: NamedBytes | null }>) | null;
 	/** Decodes what only a browser can (AAC); null where there is none. */
 	readonly decodeInBrowser: ((bytes: Uint8Array) => Promise<Sound>) | null;
 }

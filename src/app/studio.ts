@@ -95,8 +95,9 @@ export function createStudio(parts: StudioParts): Studio {
 				notices.sayError(error, "storage");
 			}
 			const { show, readOnly } = store.getState();
-			if (!found && show === null && readOnly === null && (await parts.fetchDemo()) !== null) await commands.openDemo();
+			// The desk is shown while the demo comes in, with its progress.
 			store.setState({ started: true });
+			if (!found && show === null && readOnly === null && parts.fetchDemo !== null) await commands.openDemo();
 		},
 		settled: () => feasibility.settled(),
 		flush: () => keeper.flush(),

@@ -1,6 +1,6 @@
 import type { Samples } from "../core/decode/index.ts";
 import type { RoughCut, RoughCutOptions } from "../core/draft/index.ts";
-import type { LegProblem, Plan, ShowCheck, ShowFlight } from "../core/flight/index.ts";
+import type { Leg, LegProblem, Plan, ProofCache, ShowCheck, ShowFlight } from "../core/flight/index.ts";
 import type { HandoffOptions } from "../core/handoff/index.ts";
 import type { Analysis } from "../core/music/index.ts";
 import type { Curve, FleetSlots, PackedShow, Show, Soundtrack } from "../core/show/index.ts";
@@ -72,17 +72,78 @@ async function plan({ problem }: { readonly problem: LegProblem }, report: Repor
 	return planLeg(problem, report);
 }
 
-export interface CheckAsk {
+export interface AssembleAsk {
 	readonly show: Show;
 	readonly slots: ReadonlyMap<string, FleetSlots>;
-	readonly flight: ShowFlight;
 	readonly ground: Float64Array;
 	readonly plans: ReadonlyMap<string, Plan>;
 }
 
-async function check({ show, slots, flight, plans }: CheckAsk): Promise<ShowCheck> {
+export interface AssembleAnswer {
+	/** The flight without its plans: entry i of `keys` names that of leg i, so that plans needn't cross back. */
+	readonly flight: Omit<ShowFlight, "legs"> & { readonly legs: readonly Omit<Leg, "plan">[] };
+	readonly keys: readonly string[];
+	/** The way back over the take-off grid is only known when all else is planned: it is planned here. */
+	readonly plans: ReadonlyMap<string, Plan>;
+}
+
+/** Strings planned legs together. */
+async function assemble({ show, slots, ground, plans }: AssembleAsk): Promise<AssembleAnswer> {
+	const { assembleFlight, legProblems, planLeg } = await import("../core/flight/index.ts");
+	const more = new Map<string, Plan>();
+	const all = new Map(plans);
+	const keys: string[] = [];
+	for (const problem of legProblems(show, slots, ground, plans)) {
+		keys.push(problem.key);
+		if (all.has(problem.key)) continue;
+		const plan = planLeg(problem);
+		more.set(problem.key, plan);
+		all.set(problem.key, plan);
+	}
+	const flight = assembleFlight(show, slots, ground, all);
+	return { flight: { ...flight, legs: flight.legs.map(({ plan: _plan, ...leg }) => leg) }, keys, plans: more };
+}
+
+export interface CheckAsk {
+	readonly show: Show;
+	readonly slots: ReadonlyMap<string, FleetSlots>;
+	readonly flight: ShowFlight;
+	/** Key of each leg's plan. */
+	readonly keys: readonly string[];
+}
+
+/** What this worker has proven, with the plans as it knows them: a plan that comes again is told by its content. */
+const proofs: ProofCache = new Map();
+
+async function check({ show, slots, flight, keys }: CheckAsk): Promise<ShowCheck> {
 	const { checkShow } = await import("../core/flight/index.ts");
-	return checkShow(show, new Map(slots), flight, new Map(plans));
+	const plans = new Map<string, Plan>();
+	const legs = flight.legs.map((leg, index) => {
+		const proven = proofs.get(keys[index]);
+		const plan = proven !== undefined && samePlan(proven.plan, leg.plan) ? proven.plan : leg.plan;
+		plans.set(keys[index], plan);
+		return { ...leg, plan };
+	});
+	const answer = checkShow(show, slots, { ...flight, legs }, plans, proofs);
+	for (const key of proofs.keys()) if (!plans.has(key)) proofs.delete(key);
+	return answer;
+}
+
+/** True where two plans fly the same paths by the same law to the last bit. */
+function samePlan(a: Plan, b: Plan): boolean {
+	const same = (x: ArrayLike<number>, y: ArrayLike<number>): boolean => {
+		if (x.length !== y.length) return false;
+		for (let i = 0; i < x.length; i++) if (x[i] !== y[i]) return false;
+		return true;
+	};
+	return (
+		a.degree === b.degree &&
+		a.shortest === b.shortest &&
+		same(a.target, b.target) &&
+		same(a.paths, b.paths) &&
+		same(a.law.borders, b.law.borders) &&
+		same(a.law.coefficients, b.law.coefficients)
+	);
 }
 
 export interface DraftAsk {
@@ -147,7 +208,14 @@ async function write(ask: PackedShow): Promise<Uint8Array> {
 	return ask.soundtrack === null ? new TextEncoder().encode(writeShow(ask.show)) : packShow(ask);
 }
 
-export const jobs = { analyse, lay, plan, check, draft, handoff, read, write };
+/** An SVG drawing or points as CSV → what a new formation is made of. */
+async function readShape(ask: { readonly name: string; readonly text: string; readonly count: number }) {
+	const { readPointsCsv, readSvg } = await import("../core/formation/index.ts");
+	const isSvg = ask.text.trimStart().startsWith("<");
+	return isSvg ? { shape: readSvg(ask.text, ask.name, { count: ask.count }) } : readPointsCsv(ask.text, ask.name);
+}
+
+export const jobs = { analyse, lay, plan, assemble, check, draft, handoff, read, write, readShape };
 
 export type JobKind = keyof typeof jobs;
 export type JobAsk<K extends JobKind> = Parameters<(typeof jobs)[K]>[0];

@@ -46,10 +46,10 @@ export function showCommands(bench: Workbench): ShowCommands {
 		openDemo: () =>
 			attempt(async () => {
 				if (!mayReplace()) return false;
-				const demo = await parts.fetchDemo();
-				if (demo === null) {
+				if (parts.fetchDemo === null) {
 					throw new StarstaveError("show", "There is no demo show here; open a soundtrack of your own instead.");
 				}
+				const demo = await parts.fetchDemo();
 				await openShow(bench, demo.show, demo.soundtrack);
 				return true;
 			}),
@@ -81,7 +81,9 @@ export function showCommands(bench: Workbench): ShowCommands {
 					parts.workers.run("draft", ask, { signal, onProgress }),
 				);
 				feasibility.takePlans(cut.plans);
-				return bench.edit("Rough cut", (draft) => takeOver(draft, cut.show)) !== null;
+				const isTaken = bench.edit("Rough cut", (draft) => takeOver(draft, cut.show)) !== null;
+				if (isTaken) for (const note of cut.notes) notices.say("caution", note);
+				return isTaken;
 			}),
 		save: ({ as = false, withSoundtrack } = {}) =>
 			attempt(async () => {
@@ -146,10 +148,18 @@ function looksLikeShow(bytes: Uint8Array): boolean {
 	return bytes[at] === 0x7b;
 }
 
-/** Every part of a show in place of the draft's, as one edit. The notes are the user's own and stay. */
-function takeOver(draft: DraftShow, show: Show): void {
-	const { notes: _notes, ...parts } = show;
-	Object.assign(draft, parts);
+/**
+ * What the rough cut made, in place of the cues and formations that were there. What is the user's own stays: title,
+ * notes, what the drones are like, the grid that the cut was made on, and names of sections.
+ */
+function takeOver(draft: DraftShow, cut: Show): void {
+	const { opening, formations, cues, venue } = cut;
+	Object.assign(draft, { opening, formations, cues, venue, takeoff: cut.takeoff });
+	const isSameFleet = draft.fleet.count === cut.fleet.count;
+	draft.fleet = { ...draft.fleet, count: cut.fleet.count, limits: cut.fleet.limits };
+	if (!isSameFleet) Object.assign(draft, { groups: cut.groups });
+	if (draft.grid.beats.length === 0) Object.assign(draft, { grid: cut.grid });
+	if (draft.sections.every((section) => section.name === "")) Object.assign(draft, { sections: cut.sections });
 }
 
 export function toBytes(content: unknown): Uint8Array {
