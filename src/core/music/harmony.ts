@@ -13,7 +13,7 @@ const LOW_RATE = HEARING_RATE / LOWERED;
 const WINDOW = 1024;
 /** MIDI note numbers, inclusive: middle register, bass register. */
 const REGISTERS = [
-	[50, 95],
+	[50, 96],
 	[28, 52],
 ] as const;
 /** Semitones: how far a spectral line may lie from a note and still count, as a Gaussian's spread. */
