@@ -9,15 +9,20 @@ import { priorOf, scoreBeats, walkBeats } from "./walk-beats.ts";
 
 /** Log-odds are held within this. */
 const ODDS_LIMIT = 5;
-/** Added to a downbeat's log-odds: one beat in about four is one. */
-const DOWNBEAT_ODDS = 1.1;
+/** Log-odds from which a beat at a level is worth having: training weighed beats three times (ln 3), and a little. */
+const BEAT_WORTH = 1.3;
+/** Log-odds from which a beat may be a bar's first: training weighed downbeats six times. */
+const DOWNBEAT_WORTH = 0.8;
 /** Weight of the downbeat's log-odds, and of a harmonic change (per unit of its z-score), in a bar's gain. */
 const DOWNBEAT_WEIGHT = 0.5;
 const HARMONY_WEIGHT = 0.4;
 /** Weight of what the bars gain beside what the beats gain, when levels are compared. */
-const BARS_IN_LEVEL = 1;
+const BARS_IN_LEVEL = 0.25;
 /** What a reading at another level than the walk's own must gain for each of its beats to be taken. */
-const LEVEL_COST = 0.1;
+const LEVEL_COST = 0.05;
+/** Beats a minute within which people count. */
+const SLOWEST = 48;
+const FASTEST = 230;
 
 /** Beats in seconds with their places in bars. */
 export interface BarWalk {
@@ -35,7 +40,8 @@ function highestNear(curve: Float32Array, rate: number, time: number): number {
 	return most;
 }
 
-const clamped = (x: number): number => Math.max(-ODDS_LIMIT, Math.min(ODDS_LIMIT, x));
+const logOdds = (p: number): number =>
+	Math.max(-ODDS_LIMIT, Math.min(ODDS_LIMIT, Math.log(Math.max(p, 1e-6) / Math.max(1 - p, 1e-6))));
 
 /** For each beat the evidence that it begins a bar. Where no beat is heard the downbeat curve says nothing either. */
 function weighDownbeats(activation: ActivationCurves, harmony: Harmony, beats: Float64Array): Float64Array {
@@ -43,7 +49,7 @@ function weighDownbeats(activation: ActivationCurves, harmony: Harmony, beats: F
 	return Float64Array.from(beats, (time, k) => {
 		const p = highestNear(activation.downbeat, activation.rate, time);
 		const heard = highestNear(activation.beat, activation.rate, time);
-		const odds = clamped(Math.log(Math.max(p, 1e-4) / Math.max(1 - p, 1e-4)) + DOWNBEAT_ODDS);
+		const odds = logOdds(p) - DOWNBEAT_WORTH;
 		return DOWNBEAT_WEIGHT * heard * odds + HARMONY_WEIGHT * change[k];
 	});
 }
@@ -55,11 +61,10 @@ interface Reading {
 }
 
 /** What beats gain at given times, by the same measure for every level. */
-function gainOfBeats(score: Float64Array, beats: Float64Array): number {
+function gainOfBeats(activation: ActivationCurves, beats: Float64Array): number {
 	let sum = 0;
 	for (let k = 0; k < beats.length; k++) {
-		const t = Math.round(beats[k] * 100);
-		sum += score[Math.max(0, Math.min(score.length - 1, t))];
+		sum += logOdds(highestNear(activation.beat, activation.rate, beats[k])) - BEAT_WORTH;
 		if (k > 0) sum += priorOf(beats[k] - beats[k - 1]);
 	}
 	return sum;
@@ -84,20 +89,26 @@ export function followBeats(
 	}
 	const read = (beats: Float64Array, cost: number): Reading => {
 		const bars = layBars(weighDownbeats(activation, harmony, beats));
-		return { beats, bars, score: gainOfBeats(score, beats) + BARS_IN_LEVEL * bars.gain - cost * beats.length };
+		return { beats, bars, score: gainOfBeats(activation, beats) + BARS_IN_LEVEL * bars.gain - cost * beats.length };
 	};
 	const readings: Reading[] = [read(own.beats, 0)];
-	const consider = (beats: Float64Array): void => {
-		if (beats.length >= 3) readings.push(read(beats, LEVEL_COST));
+	const tempo = (60 * (own.beats.length - 1)) / (own.beats[own.beats.length - 1] - own.beats[0]);
+	const consider = (factor: number, beats: () => Float64Array): void => {
+		if (tempo / factor < SLOWEST || tempo / factor > FASTEST) return;
+		const times = beats();
+		if (times.length >= 3) readings.push(read(times, LEVEL_COST));
 	};
-	const twice = walkBeats(score, { beats: own.beats, factor: 1 / 2 });
-	onProgress?.(0.75);
-	consider(twice.beats);
-	for (const first of [0, 1]) {
-		consider(everySecond(own.beats, first));
-		consider(everySecond(twice.beats, first));
+	const walkAt = (factor: number) => walkBeats(score, { beats: own.beats, factor }).beats;
+	consider(2, () => everySecond(own.beats, 0));
+	consider(2, () => everySecond(own.beats, 1));
+	if (tempo * 2 <= FASTEST) {
+		const twice = walkAt(1 / 2);
+		consider(1 / 2, () => twice);
+		consider(1, () => everySecond(twice, 0));
+		consider(1, () => everySecond(twice, 1));
 	}
-	for (const factor of [2 / 3, 3 / 2]) consider(walkBeats(score, { beats: own.beats, factor }).beats);
+	onProgress?.(0.8);
+	for (const factor of [2 / 3, 3 / 2]) consider(factor, () => walkAt(factor));
 	onProgress?.(1);
 	let best = readings[0];
 	for (const reading of readings) if (reading.score > best.score) best = reading;

@@ -8,8 +8,8 @@
 const METRES: readonly { readonly beats: number; readonly cost: number }[] = [
 	{ beats: 4, cost: 0 },
 	{ beats: 3, cost: 0.08 },
-	{ beats: 6, cost: 0.25 },
-	{ beats: 2, cost: 0.35 },
+	{ beats: 6, cost: 0.3 },
+	{ beats: 2, cost: 0.6 },
 	{ beats: 5, cost: 0.35 },
 	{ beats: 7, cost: 0.4 },
 ];

@@ -28,8 +28,8 @@ const REACH = 7;
 const JITTER = 0.7;
 /** Log-odds are held within this. */
 const ODDS_LIMIT = 6.4;
-/** Added to a beat's log-odds: one frame in about fifteen is near a beat. */
-const BEAT_ODDS = 2.7;
+/** Added to a beat's log-odds: less than the fifteenth of frames that lie near a beat asks for, as training already weighed beats. */
+const BEAT_ODDS = 1.7;
 /** Most people tap near here (Moelants 2002, McKinney and Moelants 2006); broad, or it loses whole collections. */
 const PRIOR_CENTRE = 118;
 const PRIOR_OCTAVES = 0.8;
