@@ -23,7 +23,7 @@ export function drawBeams(pen: CanvasRenderingContext2D, picture: RowPicture): v
 		pen.globalAlpha = 1;
 		// A line's head says what stands; after that each hold says it once.
 		const room = x1 - x0 - 8;
-		if (room > 24) nameHold(pen, hold.name, x0 + 4, lanes.beamTop - 4, room, picture);
+		if (room > 24) nameHold(pen, hold.name, x0 + (x0 < 1 ? 10 : 4), lanes.beamTop - 4, room, picture);
 	}
 	for (const beam of picture.score.beams) {
 		const reach = Math.max(beam.arrives, beam.needs ?? 0);

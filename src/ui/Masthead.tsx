@@ -43,9 +43,8 @@ export function Masthead({ actions }: { actions: readonly Action[] }) {
 				</Popover>
 			</MenuTrigger>
 			<Place />
-			<Tally />
 			{unsaved && (
-				<span className="quiet small" title="Kept in this browser; not in a file yet">
+				<span className="quiet small apart" title="Kept in this browser; not in a file yet">
 					not in a file yet
 				</span>
 			)}
@@ -80,7 +79,7 @@ function Place() {
 }
 
 /** "11 of 12 fly · 1 is too fast" */
-function Tally() {
+export function Tally() {
 	const check = useStudioState((state) => state.check);
 	const unchecked = useStudioState((state) => state.unchecked);
 	const count = useStudioState(

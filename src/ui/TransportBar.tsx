@@ -2,6 +2,7 @@ import { AudioLines, Pause, Play, Redo2, Repeat, SkipBack, Undo2, ZoomIn, ZoomOu
 import type { ReactNode } from "react";
 import { useStore } from "zustand";
 import { desk } from "./desk.ts";
+import { Tally } from "./Masthead.tsx";
 import { useStudio, useStudioState } from "./studio-context.ts";
 import { useBeatMap, useFrameLoop } from "./use-frame.ts";
 import { zoomStrip } from "./zoom-strip.ts";
@@ -92,6 +93,7 @@ export function TransportBar() {
 				/>
 			</div>
 			<Jobs />
+			<Tally />
 		</div>
 	);
 }
