@@ -6,7 +6,6 @@ import { analyseShape, runAnalyse } from "./commands/analyse.ts";
 import { checkShape, runCheck } from "./commands/check.ts";
 import { draftShape, runDraft } from "./commands/draft.ts";
 import { handoffShape, runHandoff } from "./commands/handoff.ts";
-import { retimeShape, runRetime } from "./commands/retime.ts";
 import { createProgress, type Progress } from "./progress.ts";
 
 interface Command {
@@ -18,7 +17,6 @@ const COMMANDS: readonly Command[] = [
 	{ shape: analyseShape, run: runAnalyse },
 	{ shape: draftShape, run: runDraft },
 	{ shape: checkShape, run: runCheck },
-	{ shape: retimeShape, run: runRetime },
 	{ shape: handoffShape, run: runHandoff },
 ];
 

@@ -12,7 +12,8 @@ export function createProgress(command: string): Progress {
 	return {
 		tell(share, stage) {
 			const whole = Math.floor(100 * Math.min(1, Math.max(0, share)));
-			const line = terminal ? `${command}: ${stage}, ${whole} %` : `${command}: ${stage}`;
+			const doing = stage.charAt(0).toLowerCase() + stage.slice(1);
+			const line = terminal ? `${command}: ${doing}, ${whole} %` : `${command}: ${doing}`;
 			if (line === last) return;
 			last = line;
 			open = terminal;

@@ -5,7 +5,8 @@ import { join } from "node:path";
 import { fileURLToPath } from "node:url";
 import { afterAll } from "vitest";
 
-const root = fileURLToPath(new URL("../../", import.meta.url));
+/** Where the project lies. */
+export const root = fileURLToPath(new URL("../../", import.meta.url));
 
 export interface Run {
 	readonly code: number | null;

@@ -1,3 +1,4 @@
+import { spawnSync } from "node:child_process";
 import { createHash } from "node:crypto";
 import { copyFileSync, mkdirSync, readdirSync, readFileSync, writeFileSync } from "node:fs";
 import { join } from "node:path";
@@ -7,7 +8,7 @@ import { beforeAll, describe, expect, it } from "vitest";
 import { judgeFlightPaths, ORACLE_TOLERANCE } from "../oracles/judge-flight-paths.ts";
 import { readTable } from "../oracles/read-flight-paths.ts";
 import { makeTrack } from "./make-track.ts";
-import { buildStarstave, complaint, type Run } from "./run-starstave.ts";
+import { buildStarstave, complaint, type Run, root } from "./run-starstave.ts";
 
 /** The whole job on the command line, on a piece made for it: track → show → check → files for the crew. */
 const { run, path } = buildStarstave();
@@ -275,6 +276,16 @@ describe("handoff", () => {
 			draft: true,
 			flies: false,
 		});
+	});
+});
+
+describe("npm run starstave", () => {
+	it("sets itself up and takes paths from where the user stands", () => {
+		const npm = process.platform === "win32" ? "npm.cmd" : "npm";
+		const words = ["--prefix", root, "run", "--silent", "starstave", "--", "check", "hasty.starstave.json"];
+		const result = spawnSync(npm, words, { cwd: path("."), encoding: "utf8" });
+		expect(result.stdout).toMatch(/^launch: flies/);
+		expect(result.status).toBe(2);
 	});
 });
 
