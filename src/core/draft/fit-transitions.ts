@@ -13,6 +13,11 @@ export interface Turn {
 	readonly nearer: boolean;
 }
 
+/** Beats that a transition may take that arrives at `at` where the picture before has stood since `since`. */
+export function windowBefore(at: number, since: number, isFirst: boolean): number {
+	return at - since - (isFirst ? 0 : HOLD);
+}
+
 /** Share of the time that stays in hand, so that no verdict is tight. */
 const SPARE = 0.14;
 /** Shortest hold between an arrival and the next departure, beats. */
@@ -35,7 +40,7 @@ export function fitTransitions(
 		const turn = turns[i];
 		const check = checks[i - 1];
 		const before = fitted[fitted.length - 1];
-		const window = turn.at - before.at - (fitted.length > 1 ? HOLD : 0);
+		const window = windowBefore(turn.at, before.at, fitted.length === 1);
 		const length = check.needed === null ? null : lengthFor(check.needed, turn.at, beatMap);
 		const spatial = check.verdicts.includes("too-close") || check.verdicts.includes("out-of-venue");
 		if (length !== null && !spatial && length <= window) {
@@ -52,7 +57,7 @@ export function fitTransitions(
 }
 
 /** Whole beats that hold `needed` seconds before `at`, some in hand; at least four, unless the music is slow. */
-function lengthFor(needed: number, at: number, beatMap: BeatMap): number {
+export function lengthFor(needed: number, at: number, beatMap: BeatMap): number {
 	const wanted = needed * (1 + SPARE) + 0.05;
 	let length = 1;
 	while (beatMap.secondsAt(at) - beatMap.secondsAt(at - length) < Math.max(wanted, 2)) length++;

@@ -15,7 +15,8 @@ import {
 } from "../show/index.ts";
 import { requireInRange } from "../units/index.ts";
 import { cutLight } from "./cut-light.ts";
-import { fitTransitions, type Turn } from "./fit-transitions.ts";
+import { fitTransitions, lengthFor, type Turn, windowBefore } from "./fit-transitions.ts";
+import { createReach, type Reach } from "./reach.ts";
 import { type MusicPlan, readMusic } from "./read-music.ts";
 import { breathe, chooseFigures, type Figure } from "./repertoire.ts";
 
@@ -39,6 +40,8 @@ export interface RoughCut extends FlownShow {
 
 /** Rounds of planning and fitting. Each takes a turn away or a figure nearer, so few are needed; this is the guard. */
 const ROUNDS = 24;
+/** Other figures that are tried where a letter's own can't be reached in time. */
+const TRIES = 3;
 
 /**
  * A first set of cues made from the analysis, feasible as it stands, to be worked over by hand: a transition at every
@@ -59,23 +62,24 @@ export function roughCut(
 	const venue = { ...empty.venue, ...options.venue };
 	const figures = chooseFigures(fleet, venue, options.seed ?? 1);
 	const base: Show = { ...empty, soundtrack, fleet, venue, grid: music.grid, sections: music.sections };
-	let turns = layTurns(music, figures);
-
 	const plans = new Map<string, Plan>();
 	const proofs: ProofCache = new Map();
-	let planned = 0;
+	const expected = 3 * music.sections.length + 6;
 	const planOf = (problem: LegProblem): Plan => {
-		planned++;
-		onProgress?.(Math.min(0.95, planned / (turns.length + 6)), "Planning transitions");
-		return planLeg(problem);
+		const known = plans.get(problem.key);
+		if (known) return known;
+		onProgress?.(Math.min(0.95, plans.size / expected), "Planning transitions");
+		const plan = planLeg(problem);
+		plans.set(problem.key, plan);
+		return plan;
 	};
+	let turns = layTurns(music, figures, createReach(base, planOf));
 	const notes: string[] = [];
 	for (let round = 0; ; round++) {
 		const show = assemble(base, music, turns, analysis);
 		const slots = fleetSlotsOf(show);
 		const ground = takeoffSlots(show);
 		const flown = flyShow(show, slots, ground, planOf, plans, proofs);
-		for (const [key, plan] of flown.plans) plans.set(key, plan);
 		const fitted = fitTransitions(turns, flown.check.transitions, music.beatMap);
 		if (fitted === null || round >= ROUNDS) {
 			if (music.grid.beats.length < 2)
@@ -87,22 +91,40 @@ export function roughCut(
 	}
 }
 
-/** Section after section its figure; where the same would stand twice running, and in the midst of long ones, the other of its pair. */
-function layTurns(music: MusicPlan, figures: readonly Figure[]): Turn[] {
+/**
+ * Section after section its figure; where the same would stand twice running, and in the midst of long ones, the other
+ * of its pair. Where the music gives no time for either, whatever figure can be reached, nearest in energy first; where
+ * none can, the picture that stands grows or shrinks a little.
+ */
+function layTurns(music: MusicPlan, figures: readonly Figure[], reach: Reach): Turn[] {
 	const pairs = pairFigures(music.energies, figures);
 	const turns: Turn[] = [];
-	let standing: Formation | null = null;
 	const turnTo = (at: number, pick: readonly Formation[]) => {
-		let next = pick.find((formation) => formation.id !== standing?.id) ?? pick[0];
-		// A fleet of one has one figure: it still moves, by growing.
-		if (standing !== null && next.id === standing.id) next = breathe(pick[0]);
-		turns.push({ at, length: 8, formation: next, nearer: false });
-		standing = next;
+		const before = turns.at(-1);
+		if (!before) {
+			turns.push({ at, length: 8, formation: pick[0], nearer: false });
+			return;
+		}
+		const window = windowBefore(at, before.at, turns.length === 1);
+		for (const formation of pick) {
+			if (formation.id === before.formation.id) continue;
+			const length = lengthFor(reach.needed(before.formation, formation), at, music.beatMap);
+			if (length > window) continue;
+			turns.push({ at, length, formation, nearer: false });
+			return;
+		}
+		turns.push({ at, length: Math.max(1, Math.min(4, window)), formation: breathe(before.formation), nearer: true });
 	};
 	for (const section of music.sections) {
+		const energy = music.energies.get(section.letter) ?? 0.5;
 		const pair = pairs.get(section.letter) ?? [figures[0].formation];
-		turnTo(section.from, pair);
-		for (const at of music.turnsOf(section)) turnTo(at, [...pair].reverse());
+		const others = figures
+			.filter((figure) => !pair.includes(figure.formation))
+			.sort((a, b) => Math.abs(a.energy - energy) - Math.abs(b.energy - energy))
+			.slice(0, TRIES)
+			.map((figure) => figure.formation);
+		turnTo(section.from, [...pair, ...others]);
+		for (const at of music.turnsOf(section)) turnTo(at, [...pair].reverse().concat(others));
 	}
 	if (turns.length === 0) turnTo(0, [figures[0].formation]);
 	return turns;
