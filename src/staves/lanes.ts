@@ -18,14 +18,14 @@ export interface Lanes {
 export function layLanes(spacious: boolean, ribbons: number): Lanes {
 	const ribbonCount = Math.min(3, Math.max(1, ribbons));
 	const waveTop = 20;
-	const waveHeight = spacious ? 88 : 36;
+	const waveHeight = spacious ? 120 : 36;
 	const ticks = waveTop + waveHeight + 2;
 	const beamTop = ticks + (spacious ? 30 : 24);
 	const beamHeight = spacious ? 24 : 16;
 	const ribbonTop = beamTop + beamHeight + 8;
 	const ribbonHeight = spacious ? 14 : 9;
 	const levelTop = ribbonTop + ribbonCount * (ribbonHeight + 3) + 5;
-	const levelHeight = spacious ? 40 : 18;
+	const levelHeight = spacious ? 48 : 18;
 	return {
 		height: levelTop + levelHeight + 6,
 		waveTop,

@@ -7,8 +7,8 @@ import {
 	MenuItem,
 	Modal,
 	ModalOverlay,
-	SearchField,
 	Text,
+	TextField,
 	useFilter,
 } from "react-aria-components";
 import { useStore } from "zustand";
@@ -30,9 +30,9 @@ export function CommandFinder({ actions }: { actions: readonly Action[] }) {
 			<Modal className="floating finder">
 				<Dialog aria-label="Find a command">
 					<Autocomplete filter={contains} inputValue={asked} onInputChange={setAsked}>
-						<SearchField aria-label="Command" autoFocus>
+						<TextField aria-label="Command" autoFocus>
 							<Input placeholder="What do you want to do?" />
-						</SearchField>
+						</TextField>
 						<Menu
 							className="menu"
 							items={usable}
