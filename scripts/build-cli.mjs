@@ -1,4 +1,5 @@
-// Bundles src/cli into dist-cli/starstave.mjs; decoders come along as chunks that are loaded when needed.
+// Bundles src/cli into dist-cli/starstave.mjs; decoders come along as chunks that are loaded when needed,
+// and the worker in which legs are planned as worker.mjs beside it.
 //   node scripts/build-cli.mjs [DIR]   another folder than dist-cli
 import { chmodSync, rmSync } from "node:fs";
 import { join, resolve } from "node:path";
@@ -10,7 +11,7 @@ const target = resolve(process.argv[2] ?? join(root, "dist-cli"));
 rmSync(target, { recursive: true, force: true });
 const bundle = await rolldown({
 	cwd: root,
-	input: { starstave: join(root, "src/cli/main.ts") },
+	input: { starstave: join(root, "src/cli/main.ts"), worker: join(root, "src/workers/node-worker.ts") },
 	platform: "node",
 	logLevel: "warn",
 });

@@ -1,8 +1,17 @@
-import { flyShow, type LegProblem, type Plan, planLeg, type ShowCheck, type ShowFlight } from "../core/flight/index.ts";
+import {
+	assembleFlight,
+	checkShow,
+	legProblems,
+	type Plan,
+	type ProofCache,
+	type ShowCheck,
+	type ShowFlight,
+} from "../core/flight/index.ts";
 import { fleetSlotsOf, takeoffSlots } from "../core/formation/index.ts";
 import { compileLight, type Flash, findFlashes, type LightProgram } from "../core/light/index.ts";
-import { type Curve, createBeatMap, endOfShow, type Show, toList } from "../core/show/index.ts";
+import { type Curve, createBeatMap, endOfShow, type Show } from "../core/show/index.ts";
 import { StarstaveError } from "../core/units/index.ts";
+import { planLegs } from "./plan-legs.ts";
 import { type Progress, secondsSince } from "./progress.ts";
 
 /** A show with everything that is computed from it. */
@@ -18,8 +27,7 @@ export interface Flown {
 	readonly timing: { readonly plan: Record<string, number>; readonly prove: Record<string, number> };
 }
 
-type Proofs = NonNullable<Parameters<typeof flyShow>[5]>;
-type Proof = Proofs extends Map<string, infer P> ? P : never;
+type Proof = ProofCache extends Map<string, infer P> ? P : never;
 
 /** A cache that tells how long each proof took: it is asked before a proof and filled after it. */
 class TimedProofs extends Map<string, Proof> {
@@ -58,32 +66,24 @@ function requireFleet(show: Show): void {
  * @param curves of the show's soundtrack, or null where the audio is not at hand
  * @param known plans that need not be made again; their time to plan counts as none
  */
-export function flyWhole(
+export async function flyWhole(
 	show: Show,
 	curves: readonly Curve[] | null,
 	progress: Progress,
 	known: ReadonlyMap<string, Plan> = new Map(),
-): Flown {
+): Promise<Flown> {
 	requireFleet(show);
 	const slots = fleetSlotsOf(show);
 	const ground = takeoffSlots(show);
-	const plan: Record<string, number> = {};
+	const { plans, seconds } = await planLegs(show, slots, ground, known, progress);
+	progress.tell(0.9, "proving");
 	const proofs = new TimedProofs();
-	const legs = 4 + toList(show.cues).filter((cue) => cue.kind === "transition").length;
-	let planned = 0;
-	const planOf = (problem: LegProblem): Plan => {
-		progress.tell(planned++ / legs, "planning");
-		const start = performance.now();
-		const made = planLeg(problem);
-		plan[problem.id] = (plan[problem.id] ?? 0) + secondsSince(start);
-		return made;
-	};
-	const { flight, check, problems } = flyShow(show, slots, ground, planOf, known, proofs);
-	const prove: Record<string, number> = {};
-	for (const { id, key } of problems) {
-		plan[id] ??= 0;
-		const seconds = proofs.seconds.get(key);
-		if (seconds !== undefined) prove[id] = (prove[id] ?? 0) + seconds;
+	const flight = assembleFlight(show, slots, ground, plans);
+	const check = checkShow(show, slots, flight, plans, proofs);
+	const timing: Record<"plan" | "prove", Record<string, number>> = { plan: {}, prove: {} };
+	for (const { id, key } of legProblems(show, slots, ground, plans)) {
+		timing.plan[id] = seconds[id] ?? 0;
+		timing.prove[id] = (timing.prove[id] ?? 0) + (proofs.seconds.get(key) ?? 0);
 		proofs.seconds.delete(key);
 	}
 	progress.tell(0.95, "light");
@@ -94,5 +94,5 @@ export function flyWhole(
 	if (curves === null) {
 		notes.push("The soundtrack was not at hand, so flashes of what follows the music can't be judged.");
 	}
-	return { show, flight, check, light, flashes, notes, timing: { plan, prove } };
+	return { show, flight, check, light, flashes, notes, timing };
 }

@@ -56,6 +56,6 @@ export async function runCheck(given: Arguments, progress: Progress): Promise<An
 	const [path] = given.operands;
 	const { show, soundtrack } = readShowFile(path);
 	const curves = await hearCurves(show, path, soundtrack, given.values.get("--soundtrack"), progress);
-	const flown = flyWhole(show, curves, progress);
+	const flown = await flyWhole(show, curves, progress);
 	return { code: flown.check.flies ? 0 : 2, json: describeCheck(flown), lines: checkLines(show, flown) };
 }

@@ -41,7 +41,7 @@ export async function runDraft(given: Arguments, progress: Progress): Promise<An
 	);
 	const { show } = cut;
 	// What was cut is checked from the show alone, as `check` would from the file.
-	const flown = flyWhole(show, track.analysis.curves, progress, cut.plans);
+	const flown = await flyWhole(show, track.analysis.curves, progress, cut.plans);
 	writeShowFile(out, show, { name: track.soundtrack.file, bytes: track.bytes });
 	const cues = { colour: 0, intensity: 0, transition: 0 };
 	for (const cue of toList(show.cues)) cues[cue.kind] += 1;

@@ -53,7 +53,7 @@ export async function runHandoff(given: Arguments, progress: Progress): Promise<
 	requireEmptyFolder(out);
 	const { show, soundtrack } = readShowFile(path);
 	const curves = await hearCurves(show, path, soundtrack, given.values.get("--soundtrack"), progress);
-	const flown = flyWhole(show, curves, progress);
+	const flown = await flyWhole(show, curves, progress);
 	if (!flown.check.flies && !draft) {
 		const json = { flies: false, written: false, files: [], revision: null };
 		const lines = [
