@@ -102,6 +102,7 @@ describe("edits of the document", () => {
 				(d) => setGrid(d, { ...show.grid, beats: [2, 1] }),
 				"Beat 1 of the grid stands at 1 s, but must come after beat 0 at 2 s.",
 			],
+			[(d) => shiftBeats(d, -700), "Cue 1 (id c1) starts at -701.5 s, but must start at -600 s or later."],
 			[(d) => splitSection(d, "s1", 32), "Section Verse runs from beat 0 to 32; it can't be split at beat 32."],
 		];
 		for (const [recipe, sentence] of refused) expect(() => applyEdit(show, recipe)).toThrow(sentence);

@@ -1,6 +1,9 @@
 import * as v from "valibot";
 import { StarstaveError } from "../../units/index.ts";
+import { requireCues } from "../check-references.ts";
+import type { Cue } from "../schema/cue.ts";
 import { describeIssue } from "../schema/describe-issue.ts";
+import type { DraftShow } from "./apply-edit.ts";
 
 /**
  * Holds one part of the show against its schema, inside an edit.
@@ -25,4 +28,20 @@ export function checkKeyed<S extends v.GenericSchema>(schema: S, key: string, pa
 	const result = v.safeParse(v.looseObject({ [key]: schema }), { [key]: part }, { abortEarly: true });
 	if (!result.success) throw new StarstaveError("show", describeIssue({ [key]: part }, result.issues[0]));
 	return (result.output as Record<string, v.InferOutput<S>>)[key];
+}
+
+/**
+ * Holds cues against the show that they stand in: their formations, and that they start and end near the music.
+ * @param cues every cue unless told: what an edit of grid or soundtrack asks
+ */
+export function checkCuesIn(
+	draft: DraftShow,
+	cues: readonly Cue[] = draft.cues.order.map((id) => draft.cues.byId[id] as Cue),
+): void {
+	requireCues(cues, {
+		formations: draft.formations.order,
+		beats: draft.grid.beats,
+		bars: draft.grid.bars,
+		duration: draft.soundtrack?.duration ?? null,
+	});
 }

@@ -1,13 +1,12 @@
 import type { InferInput } from "valibot";
 import { StarstaveError } from "../../units/index.ts";
-import { requireCues } from "../check-references.ts";
 import { numberBetween } from "../cue-number.ts";
 import { cuesInTime, cueTimes } from "../cue-times.ts";
 import { createBeatMap } from "../grid.ts";
 import { find } from "../ordered.ts";
 import { type Cue, cue as cueSchema } from "../schema/cue.ts";
 import type { DraftShow } from "./apply-edit.ts";
-import { checkListed } from "./check-part.ts";
+import { checkCuesIn, checkListed } from "./check-part.ts";
 import { newId } from "./new-id.ts";
 
 type Written = InferInput<typeof cueSchema>;
@@ -33,12 +32,7 @@ function requireCue(draft: DraftShow, id: string): Cue {
 
 function checkCue(draft: DraftShow, written: unknown): Cue {
 	const cue = checkListed(cueSchema, "cues", written);
-	requireCues([cue], {
-		formations: draft.formations.order,
-		beats: draft.grid.beats,
-		bars: draft.grid.bars,
-		duration: draft.soundtrack?.duration ?? null,
-	});
+	checkCuesIn(draft, [cue]);
 	return cue;
 }
 

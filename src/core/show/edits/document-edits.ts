@@ -4,7 +4,7 @@ import type { Fleet, Limits, Takeoff, Venue } from "../schema/fleet-venue.ts";
 import { fleet, takeoff, venue } from "../schema/fleet-venue.ts";
 import { type DroneGroup, group, type Soundtrack, soundtrack } from "../schema/show-file.ts";
 import type { DraftShow } from "./apply-edit.ts";
-import { checkKeyed, checkListed } from "./check-part.ts";
+import { checkCuesIn, checkKeyed, checkListed } from "./check-part.ts";
 
 export function setTitle(draft: DraftShow, title: string): void {
 	draft.title = title;
@@ -17,6 +17,7 @@ export function setNotes(draft: DraftShow, notes: string): void {
 /** Names the soundtrack, or takes it away with null. The grid stays: a new edit of the music is retimed, not swapped. */
 export function setSoundtrack(draft: DraftShow, to: Soundtrack | null): void {
 	draft.soundtrack = to === null ? null : checkKeyed(soundtrack, "soundtrack", to);
+	checkCuesIn(draft);
 }
 
 /** Where the fleet waits, dark, when the music starts. */

@@ -3,11 +3,13 @@ import { requireGrid } from "../check-references.ts";
 import type { Bar } from "../schema/show-file.ts";
 import type { Grid } from "../show.ts";
 import type { DraftShow } from "./apply-edit.ts";
+import { checkCuesIn } from "./check-part.ts";
 
 /** Replaces the grid whole. Cues keep their positions, so they move with their beats; pinned ones stay. */
 export function setGrid(draft: DraftShow, grid: Grid): void {
 	requireGrid(grid.beats, grid.bars);
 	draft.grid = { ...grid, beats: [...grid.beats], bars: grid.bars.map((bar) => ({ ...bar })) };
+	checkCuesIn(draft);
 }
 
 function requireBeats(draft: DraftShow, least: number, what: string): void {
@@ -70,8 +72,8 @@ export function doubleBeats(draft: DraftShow): void {
 		const next = i + 1 < draft.grid.bars.length ? 2 * draft.grid.bars[i + 1].beat : beats.length;
 		for (let beat = 2 * bar.beat; beat < next; beat += bar.beatsPerBar) bars.push({ ...bar, beat });
 	});
-	edited(draft, beats, bars);
 	scalePositions(draft, (position) => 2 * position, 2);
+	edited(draft, beats, bars);
 }
 
 /** Half as many beats, in as many beats to the bar, bar 1 kept where it is; everything keeps its place in the music. */
@@ -87,8 +89,8 @@ export function halveBeats(draft: DraftShow): void {
 		if (Number.isInteger(beat) && (before === null || beat - before.beat >= before.beatsPerBar))
 			bars.push({ ...bar, beat });
 	}
-	edited(draft, beats, bars);
 	scalePositions(draft, (position) => (position - odd) / 2, 0.5);
+	edited(draft, beats, bars);
 }
 
 /** Moves one beat in time, between its neighbours. */
