@@ -21,8 +21,8 @@ export interface BarDivision {
 	/** For each beat its place in its bar, from 0, and the beats of that bar. */
 	readonly places: Uint8Array;
 	readonly metres: Uint8Array;
-	/** What the division gains, in the evidence's own unit. */
-	readonly gain: number;
+	/** What each beat brings to the division, in the evidence's own unit. */
+	readonly gains: Float64Array;
 }
 
 /** @param evidence for each beat, log-odds that it begins a bar (0: no opinion) */
@@ -67,7 +67,6 @@ export function layBars(evidence: Float64Array): BarDivision {
 	for (let other = 1; other < kinds; other++) {
 		if (best[count * kinds + other] > best[count * kinds + m]) m = other;
 	}
-	const gain = best[count * kinds + m];
 	const places = new Uint8Array(count);
 	const metres = new Uint8Array(count);
 	for (let end = count; end > 0; ) {
@@ -82,5 +81,7 @@ export function layBars(evidence: Float64Array): BarDivision {
 		m = came[at];
 		end = from;
 	}
-	return { places, metres, gain };
+	const costOf = (beats: number): number => METRES.find((metre) => metre.beats === beats)?.cost ?? 0;
+	const gains = evidence.map((value, k) => (places[k] === 0 ? value : -value) - costOf(metres[k]));
+	return { places, metres, gains };
 }

@@ -57,7 +57,8 @@ export function playBand(parts: readonly Part[], rate = 44_100, leadIn = 0.4): P
 					events.push({
 						at,
 						length: 0.2,
-						play: (t) => 0.6 * Math.exp(-t * 18) * Math.sin(2 * Math.PI * (50 * t + 4 * (1 - Math.exp(-t * 30)))),
+						play: (t) =>
+							0.6 * part.fullness * Math.exp(-t * 18) * Math.sin(2 * Math.PI * (50 * t + 4 * (1 - Math.exp(-t * 30)))),
 					});
 				} else {
 					events.push({ at, length: 0.15, play: (t) => 0.3 * part.fullness * Math.exp(-t * 25) * noise() });
@@ -69,7 +70,7 @@ export function playBand(parts: readonly Part[], rate = 44_100, leadIn = 0.4): P
 				events.push({
 					at,
 					length: beat * 0.9,
-					play: (t) => 0.25 * Math.exp(-t * 4) * Math.sin(2 * Math.PI * bass * t),
+					play: (t) => 0.25 * part.fullness * Math.exp(-t * 4) * Math.sin(2 * Math.PI * bass * t),
 				});
 				if (k !== 0) continue;
 				for (const step of [0, part.song === 1 ? 3 : 4, 7]) {
