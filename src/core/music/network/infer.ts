@@ -1,14 +1,14 @@
 /**
- * The network's forward pass in plain loops over flat arrays: two small convolutions over the mel bands, then a temporal
- * convolutional network (Davies and Böck, 2019). `src/training/network.py` is the same network in PyTorch; a test holds
- * the two together.
+ * The network's forward pass: two small convolutions over the mel bands, then a temporal convolutional network (Davies
+ * and Böck, 2019). `src/training/network.py` is the same network in PyTorch; a test holds the two together.
  *
- * All arrays lie frame after frame, so that what is summed lies side by side; sums are made four outputs by two
- * frames at a time, in eight registers. Doubles inside: typed doubles are read without conversion, which is faster in
- * JavaScript than half the memory. The front end goes through in blocks of frames that stay in the cache.
+ * Every layer is a gathering of inputs into rows and one multiplication (multiply.ts), block by block of frames, so
+ * that what is gathered stays in the cache. Arrays lie frame after frame.
  */
+import { createMultiplier, type Multiplier, ROWS_TOGETHER } from "./multiply.ts";
 import {
 	CHANNELS,
+	CHROMA_ROWS,
 	FIRST,
 	FIRST_BANDS,
 	JOINED,
@@ -21,10 +21,65 @@ import {
 	SECOND_BANDS,
 } from "./weights.ts";
 
-/** Frames that go through the front end together. */
-const BLOCK = 128;
+/** Frames that go through a layer together; a multiple of 4. */
+const BLOCK = 64;
+/** Inputs of one output of the first and second convolution, and of a block's. */
+const FIRST_SIZE = KERNEL * 3;
+const SECOND_SIZE = 9 * FIRST;
+const WIDE_SIZE = KERNEL * CHANNELS;
+/** Numbers gathered for a block of frames: the second convolution needs most. The first sees two frames more. */
+const GATHERED = Math.max((BLOCK + 4) * MEL_ROWS * FIRST_SIZE, BLOCK * FIRST_BANDS * SECOND_SIZE);
+const ANSWERED = (BLOCK + 4) * MEL_ROWS * SECOND;
 
 const elu = (x: number): number => (x > 0 ? x : Math.expm1(x));
+
+/** A layer in the multiplier's arena. */
+interface Placed {
+	readonly weight: number;
+	readonly bias: number;
+	readonly size: number;
+	readonly outputs: number;
+}
+
+/** Everything a pass works with: one arena holds gathered rows, answers and weights. */
+interface Pass {
+	readonly multiplier: Multiplier;
+	/** Where rows are gathered, and where the answers of a multiplication go. */
+	readonly rows: number;
+	readonly answer: number;
+	readonly place: (layer: Layer) => Placed;
+}
+
+function startPass(): Pass {
+	const most = WIDE_SIZE * CHANNELS + CHANNELS; // the largest layer, with its biases
+	const multiplier = createMultiplier(GATHERED + ANSWERED + 2 * most);
+	const { arena } = multiplier;
+	let next = GATHERED + ANSWERED;
+	const place = ({ weight, bias }: Layer): Placed => {
+		const size = weight.length / bias.length;
+		const outputs = Math.ceil(bias.length / 8) * 8;
+		// Two layers are in use at a time at most; a third goes where the first was.
+		if (next + (size + 1) * outputs > arena.length) next = GATHERED + ANSWERED;
+		const at = next;
+		arena.fill(0, at, at + (size + 1) * outputs);
+		for (let o = 0; o < bias.length; o++) {
+			for (let k = 0; k < size; k++) arena[at + k * outputs + o] = weight[o * size + k];
+			arena[at + size * outputs + o] = bias[o];
+		}
+		next = at + (size + 1) * outputs;
+		return { weight: at, bias: at + size * outputs, size, outputs };
+	};
+	return { multiplier, rows: 0, answer: GATHERED, place };
+}
+
+/** Multiplies what is gathered; `count` rows, filled up to a multiple of four with whatever lies there. */
+function run({ multiplier, rows, answer }: Pass, layer: Placed, count: number): void {
+	const full = Math.ceil(count / ROWS_TOGETHER) * ROWS_TOGETHER;
+	multiplier.multiply(rows, layer.weight, layer.bias, answer, full, layer.size, layer.outputs);
+}
+
+/** Where row r's first value is gathered; its value k lies 4 k further. */
+const rowAt = (row: number, size: number): number => (row >> 2) * 4 * size + (row & 3);
 
 /**
  * @param input frame i's ROWS values at i · ROWS, as `features.ts` gives them
@@ -37,18 +92,11 @@ export function infer(
 	onProgress: (share: number) => void = () => {},
 ): Float32Array {
 	const frames = input.length / ROWS;
-	let now: Float64Array = new Float64Array(frames * CHANNELS);
-	const joined = new Float64Array(BLOCK * JOINED);
-	for (let from = 0; from < frames; from += BLOCK) {
-		const count = Math.min(BLOCK, frames - from);
-		readBands(input, frames, from, count, weights, joined);
-		multiply(joined, count, JOINED, weights.join, now.subarray(from * CHANNELS, (from + count) * CHANNELS));
-		onProgress((0.5 * (from + count)) / frames);
-	}
-	for (let i = 0; i < now.length; i++) now[i] = elu(now[i]);
-	let next: Float64Array = new Float64Array(now.length);
-	weights.blocks.forEach(({ wide, mix }, index) => {
-		passBlock(now, frames, 2 ** index, wide, mix, next);
+	const pass = startPass();
+	let now = joinBands(pass, input, readBands(pass, input, frames, weights, onProgress), weights);
+	let next: Float32Array = new Float32Array(now.length);
+	weights.blocks.forEach((block, index) => {
+		passBlock(pass, now, frames, 2 ** index, pass.place(block.wide), pass.place(block.mix), next);
 		[now, next] = [next, now];
 		onProgress(0.5 + (0.5 * (index + 1)) / weights.blocks.length);
 	});
@@ -64,196 +112,158 @@ export function infer(
 	return logits;
 }
 
-/** Width of a frame after the first pooling, with a silent band on either side. */
-const PADDED = (FIRST_BANDS + 2) * FIRST;
-
-/** Front end of frames `from` … `from + count`: writes JOINED values a frame (pooled bands, then chroma) to `joined`. */
+/** The two convolutions over the mel bands: SECOND_BANDS × SECOND values a frame. */
 function readBands(
+	pass: Pass,
+	input: Float32Array,
+	frames: number,
+	weights: NetworkWeights,
+	onProgress: (share: number) => void,
+): Float32Array {
+	const out = new Float32Array(frames * SECOND_BANDS * SECOND);
+	const first = pass.place(weights.first);
+	const second = pass.place(weights.second);
+	// Pooled bands of the block, one frame more on either side, a silent band below and above.
+	const padded = (FIRST_BANDS + 2) * FIRST;
+	const pooled = new Float32Array((BLOCK + 2) * padded);
+	for (let from = 0; from < frames; from += BLOCK) {
+		const count = Math.min(BLOCK, frames - from);
+		convolveFirst(pass, first, input, frames, from - 1, count + 2, pooled);
+		convolveSecond(pass, second, pooled, count, out, from * SECOND_BANDS * SECOND);
+		onProgress((0.5 * (from + count)) / frames);
+	}
+	return out;
+}
+
+/** Frames `from` … `from + count` of the first convolution, pooled by three bands, into `pooled`. */
+function convolveFirst(
+	pass: Pass,
+	layer: Placed,
 	input: Float32Array,
 	frames: number,
 	from: number,
 	count: number,
-	weights: NetworkWeights,
-	joined: Float64Array,
+	pooled: Float32Array,
 ): void {
-	// The second convolution looks one frame to either side, the first two more.
-	const pooled = new Float64Array((count + 2) * PADDED);
-	const patch = new Float64Array(KERNEL * (MEL_ROWS + 2));
-	for (let i = 0; i < count + 2; i++) {
-		const frame = from + i - 1;
-		if (frame < 0 || frame >= frames) continue; // outside the track the second convolution sees zeros
-		for (let t = 0; t < KERNEL; t++) {
-			const source = frame + t - 2;
-			const row = t * (MEL_ROWS + 2) + 1;
-			for (let f = 0; f < MEL_ROWS; f++) {
-				patch[row + f] = source >= 0 && source < frames ? input[source * ROWS + f] : 0;
-			}
-		}
-		convolveFirst(patch, weights.first, pooled, i * PADDED + FIRST);
-	}
+	const { arena } = pass.multiplier;
+	const padded = (FIRST_BANDS + 2) * FIRST;
 	for (let i = 0; i < count; i++) {
-		convolveSecond(pooled, i * PADDED, weights.second, joined, i * JOINED);
-		for (let r = 0; r < ROWS - MEL_ROWS; r++) {
-			joined[i * JOINED + SECOND * SECOND_BANDS + r] = input[(from + i) * ROWS + MEL_ROWS + r];
-		}
-	}
-}
-
-/** One frame of the first convolution, pooled by three bands: FIRST_BANDS × FIRST values from `at` on. */
-function convolveFirst(patch: Float64Array, { weight, bias }: Layer, out: Float64Array, at: number): void {
-	const width = MEL_ROWS + 2;
-	for (let band = 0; band < FIRST_BANDS; band++) {
-		for (let o = 0; o < FIRST; o += 2) {
-			let a0 = 0;
-			let a1 = 0;
-			let a2 = 0;
-			let b0 = 0;
-			let b1 = 0;
-			let b2 = 0;
-			for (let t = 0; t < KERNEL; t++) {
-				const x = t * width + band * 3;
-				const x0 = patch[x];
-				const x1 = patch[x + 1];
-				const x2 = patch[x + 2];
-				const x3 = patch[x + 3];
-				const x4 = patch[x + 4];
-				const w = (o * KERNEL + t) * 3;
-				const u0 = weight[w];
-				const u1 = weight[w + 1];
-				const u2 = weight[w + 2];
-				a0 += u0 * x0 + u1 * x1 + u2 * x2;
-				a1 += u0 * x1 + u1 * x2 + u2 * x3;
-				a2 += u0 * x2 + u1 * x3 + u2 * x4;
-				const v0 = weight[w + KERNEL * 3];
-				const v1 = weight[w + KERNEL * 3 + 1];
-				const v2 = weight[w + KERNEL * 3 + 2];
-				b0 += v0 * x0 + v1 * x1 + v2 * x2;
-				b1 += v0 * x1 + v1 * x2 + v2 * x3;
-				b2 += v0 * x2 + v1 * x3 + v2 * x4;
+		for (let t = 0; t < KERNEL; t++) {
+			const frame = from + i + t - 2;
+			const inside = frame >= 0 && frame < frames;
+			for (let band = 0; band < MEL_ROWS; band++) {
+				const to = pass.rows + rowAt(i * MEL_ROWS + band, FIRST_SIZE) + 4 * 3 * t;
+				const at = frame * ROWS + band;
+				arena[to] = inside && band > 0 ? input[at - 1] : 0;
+				arena[to + 4] = inside ? input[at] : 0;
+				arena[to + 8] = inside && band + 1 < MEL_ROWS ? input[at + 1] : 0;
 			}
-			out[at + band * FIRST + o] = elu(Math.max(a0, a1, a2) + bias[o]);
-			out[at + band * FIRST + o + 1] = elu(Math.max(b0, b1, b2) + bias[o + 1]);
 		}
 	}
-}
-
-/** One frame of the second convolution, pooled by four bands: SECOND_BANDS × SECOND values from `to` on. */
-function convolveSecond(x: Float64Array, at: number, { weight, bias }: Layer, out: Float64Array, to: number): void {
-	const span = 3 * FIRST; // three bands of one frame lie side by side
-	const size = 3 * span;
-	for (let group = 0; group < SECOND_BANDS; group++) {
-		for (let o = 0; o < SECOND; o += 2) {
-			let a0 = 0;
-			let a1 = 0;
-			let a2 = 0;
-			let a3 = 0;
-			let b0 = 0;
-			let b1 = 0;
-			let b2 = 0;
-			let b3 = 0;
-			for (let t = 0; t < 3; t++) {
-				let p = at + t * PADDED + group * 4 * FIRST;
-				let w = o * size + t * span;
-				for (const end = p + span; p < end; p++, w++) {
-					const u = weight[w];
-					const v = weight[w + size];
-					const x0 = x[p];
-					const x1 = x[p + FIRST];
-					const x2 = x[p + 2 * FIRST];
-					const x3 = x[p + 3 * FIRST];
-					a0 += u * x0;
-					a1 += u * x1;
-					a2 += u * x2;
-					a3 += u * x3;
-					b0 += v * x0;
-					b1 += v * x1;
-					b2 += v * x2;
-					b3 += v * x3;
-				}
+	run(pass, layer, count * MEL_ROWS);
+	for (let i = 0; i < count; i++) {
+		const to = i * padded + FIRST;
+		if (from + i < 0 || from + i >= frames) {
+			pooled.fill(0, to, to + FIRST_BANDS * FIRST); // outside the track the second convolution sees zeros
+			continue;
+		}
+		for (let band = 0; band < FIRST_BANDS; band++) {
+			const at = pass.answer + (i * MEL_ROWS + 3 * band) * layer.outputs;
+			for (let o = 0; o < FIRST; o++) {
+				const highest = Math.max(arena[at + o], arena[at + layer.outputs + o], arena[at + 2 * layer.outputs + o]);
+				pooled[to + band * FIRST + o] = elu(highest);
 			}
-			out[to + group * SECOND + o] = elu(Math.max(a0, a1, a2, a3) + bias[o]);
-			out[to + group * SECOND + o + 1] = elu(Math.max(b0, b1, b2, b3) + bias[o + 1]);
 		}
 	}
 }
 
-/** One residual block: x + mix(elu(wide(x))), frame by frame in blocks. */
-function passBlock(
-	x: Float64Array,
-	frames: number,
-	dilation: number,
-	wide: Layer,
-	mix: Layer,
-	out: Float64Array,
+/** `count` frames of the second convolution, pooled by four bands, into `out` from `to` on. */
+function convolveSecond(
+	pass: Pass,
+	layer: Placed,
+	pooled: Float32Array,
+	count: number,
+	out: Float32Array,
+	to: number,
 ): void {
-	const span = CHANNELS * KERNEL;
-	const gathered = new Float64Array(BLOCK * span);
-	const middle = new Float64Array(BLOCK * CHANNELS);
+	const { arena } = pass.multiplier;
+	const padded = (FIRST_BANDS + 2) * FIRST;
+	const span = 3 * FIRST; // three bands of one frame lie side by side
+	for (let i = 0; i < count; i++) {
+		for (let band = 0; band < FIRST_BANDS; band++) {
+			const row = pass.rows + rowAt(i * FIRST_BANDS + band, SECOND_SIZE);
+			for (let t = 0; t < 3; t++) {
+				const at = (i + t) * padded + band * FIRST;
+				const start = row + 4 * t * span;
+				for (let k = 0; k < span; k++) arena[start + 4 * k] = pooled[at + k];
+			}
+		}
+	}
+	run(pass, layer, count * FIRST_BANDS);
+	for (let group = 0; group < count * SECOND_BANDS; group++) {
+		const at = pass.answer + 4 * group * SECOND;
+		for (let o = 0; o < SECOND; o++) {
+			const highest = Math.max(
+				arena[at + o],
+				arena[at + SECOND + o],
+				arena[at + 2 * SECOND + o],
+				arena[at + 3 * SECOND + o],
+			);
+			out[to + group * SECOND + o] = elu(highest);
+		}
+	}
+}
+
+/** Bands and chroma to CHANNELS values a frame. */
+function joinBands(pass: Pass, input: Float32Array, bands: Float32Array, weights: NetworkWeights): Float32Array {
+	const frames = input.length / ROWS;
+	const out = new Float32Array(frames * CHANNELS);
+	const { arena } = pass.multiplier;
+	const layer = pass.place(weights.join);
+	const fromBands = SECOND_BANDS * SECOND;
 	for (let from = 0; from < frames; from += BLOCK) {
 		const count = Math.min(BLOCK, frames - from);
 		for (let i = 0; i < count; i++) {
-			for (let k = 0; k < KERNEL; k++) {
-				const source = from + i + (k - 2) * dilation;
-				const to = i * span + k * CHANNELS;
-				if (source >= 0 && source < frames) {
-					const at = source * CHANNELS;
-					for (let c = 0; c < CHANNELS; c++) gathered[to + c] = x[at + c];
-				} else gathered.fill(0, to, to + CHANNELS);
-			}
+			const row = pass.rows + rowAt(i, JOINED);
+			for (let k = 0; k < fromBands; k++) arena[row + 4 * k] = bands[(from + i) * fromBands + k];
+			const chroma = (from + i) * ROWS + MEL_ROWS;
+			for (let k = 0; k < CHROMA_ROWS; k++) arena[row + 4 * (fromBands + k)] = input[chroma + k];
 		}
-		multiply(gathered, count, span, wide, middle);
-		for (let i = 0; i < count * CHANNELS; i++) middle[i] = elu(middle[i]);
-		const part = out.subarray(from * CHANNELS, (from + count) * CHANNELS);
-		multiply(middle, count, CHANNELS, mix, part);
-		for (let i = 0; i < part.length; i++) part[i] += x[from * CHANNELS + i];
+		run(pass, layer, count);
+		for (let k = 0; k < count * CHANNELS; k++) out[from * CHANNELS + k] = elu(arena[pass.answer + k]);
 	}
+	return out;
 }
 
-/** CHANNELS outputs for each of `count` frames of `size` inputs: out = bias + weight · x. */
-function multiply(x: Float64Array, count: number, size: number, { weight, bias }: Layer, out: Float64Array): void {
-	for (let i = 0; i < count; i += 2) {
-		const p = i * size;
-		const q = i + 1 < count ? p + size : p; // an odd last frame is summed twice and written once
-		for (let o = 0; o < CHANNELS; o += 4) {
-			let a0 = bias[o];
-			let a1 = bias[o + 1];
-			let a2 = bias[o + 2];
-			let a3 = bias[o + 3];
-			let b0 = a0;
-			let b1 = a1;
-			let b2 = a2;
-			let b3 = a3;
-			const w0 = o * size;
-			const w1 = w0 + size;
-			const w2 = w1 + size;
-			const w3 = w2 + size;
-			for (let k = 0; k < size; k++) {
-				const y = x[p + k];
-				const z = x[q + k];
-				const u0 = weight[w0 + k];
-				const u1 = weight[w1 + k];
-				const u2 = weight[w2 + k];
-				const u3 = weight[w3 + k];
-				a0 += u0 * y;
-				a1 += u1 * y;
-				a2 += u2 * y;
-				a3 += u3 * y;
-				b0 += u0 * z;
-				b1 += u1 * z;
-				b2 += u2 * z;
-				b3 += u3 * z;
-			}
-			const to = i * CHANNELS + o;
-			out[to] = a0;
-			out[to + 1] = a1;
-			out[to + 2] = a2;
-			out[to + 3] = a3;
-			if (q !== p) {
-				out[to + CHANNELS] = b0;
-				out[to + CHANNELS + 1] = b1;
-				out[to + CHANNELS + 2] = b2;
-				out[to + CHANNELS + 3] = b3;
+/** One residual block: x + mix(elu(wide(x))). */
+function passBlock(
+	pass: Pass,
+	x: Float32Array,
+	frames: number,
+	dilation: number,
+	wide: Placed,
+	mix: Placed,
+	out: Float32Array,
+): void {
+	const { arena } = pass.multiplier;
+	for (let from = 0; from < frames; from += BLOCK) {
+		const count = Math.min(BLOCK, frames - from);
+		for (let i = 0; i < count; i++) {
+			const row = pass.rows + rowAt(i, WIDE_SIZE);
+			for (let tap = 0; tap < KERNEL; tap++) {
+				const source = from + i + (tap - 2) * dilation;
+				const inside = source >= 0 && source < frames;
+				const to = row + 4 * tap * CHANNELS;
+				for (let c = 0; c < CHANNELS; c++) arena[to + 4 * c] = inside ? x[source * CHANNELS + c] : 0;
 			}
 		}
+		run(pass, wide, count);
+		for (let i = 0; i < count; i++) {
+			const row = pass.rows + rowAt(i, CHANNELS);
+			for (let c = 0; c < CHANNELS; c++) arena[row + 4 * c] = elu(arena[pass.answer + i * CHANNELS + c]);
+		}
+		run(pass, mix, count);
+		const base = from * CHANNELS;
+		for (let k = 0; k < count * CHANNELS; k++) out[base + k] = x[base + k] + arena[pass.answer + k];
 	}
 }
