@@ -8,3 +8,5 @@ export {
 	type Stretch,
 	type StretchKind,
 } from "./edit-map.ts";
+export { type MapOptions, mapEdit } from "./map-edit.ts";
+export { type Place, placesOf } from "./places.ts";

@@ -1,0 +1,110 @@
+/** Whether the samples themselves are the same along a line, and from where to where: then nothing is left to guess. */
+import type { Samples } from "../decode/index.ts";
+import type { Line } from "./line.ts";
+import { oldOn } from "./line.ts";
+import { audible } from "./small-copy.ts";
+
+/** Samples may differ by the rounding of a 16-bit file and its dither. */
+const SAME = 2.5 / 32768;
+const PROBE = 2048;
+const PROBES = 9;
+/** Samples to either side of the measured offset that are tried. */
+const NEAR = 3;
+/** So many unlike samples in a row end a stretch: one alone may be a click that was taken out. */
+const ENOUGH = 12;
+
+/** Full-rate mono of a soundtrack, read where it is needed. */
+export interface MonoReader {
+	readonly length: number;
+	/** Sample i of the mean of all channels; 0 outside. */
+	at(i: number): number;
+}
+
+export function createMonoReader(samples: Samples): MonoReader {
+	const channels = audible(samples.channels);
+	const length = samples.channels[0]?.length ?? 0;
+	const first = channels[0];
+	if (channels.length === 1) return { length, at: (i) => (i >= 0 && i < length ? first[i] : 0) };
+	const at = (i: number): number => {
+		if (i < 0 || i >= length) return 0;
+		let sum = 0;
+		for (const channel of channels) sum += channel[i];
+		return sum / channels.length;
+	};
+	return { length, at };
+}
+
+/**
+ * The whole number of samples by which old runs ahead of new along a line of rate 1 where the samples are the same, or
+ * null where they aren't.
+ * @param from new samples, likewise `to`
+ */
+export function sameOffset(
+	old: MonoReader,
+	current: MonoReader,
+	line: Line,
+	sampleRate: number,
+	from: number,
+	to: number,
+): number | null {
+	if (line.rate !== 1) return null;
+	const near = Math.round(oldOn(line, 0) * sampleRate);
+	const votes = new Map<number, number>();
+	let heard = 0;
+	for (let p = 0; p < PROBES; p++) {
+		const start = Math.round(from + ((to - from - PROBE) * (p + 0.5)) / PROBES);
+		let energy = 0;
+		for (let i = 0; i < PROBE; i++) energy += current.at(start + i) ** 2;
+		if (energy < PROBE * SAME * SAME * 100) continue;
+		heard++;
+		for (let d = -NEAR; d <= NEAR; d++) {
+			let unlike = 0;
+			for (let i = 0; i < PROBE && unlike < PROBE / 50; i++) {
+				if (Math.abs(current.at(start + i) - old.at(start + i + near + d)) > SAME) unlike++;
+			}
+			if (unlike < PROBE / 50) votes.set(near + d, (votes.get(near + d) ?? 0) + 1);
+		}
+	}
+	let best: number | null = null;
+	for (const [offset, count] of votes) {
+		if (count >= Math.max(1, 0.6 * heard) && (best === null || count > (votes.get(best) ?? 0))) best = offset;
+	}
+	return best;
+}
+
+/**
+ * How far the samples stay the same, from a new sample inside the stretch on.
+ * @param step 1 forwards, −1 backwards
+ * @param most samples to look at
+ * @returns the last new sample (backwards: the first) that is the same; `start − step` where not even the start is
+ */
+export function sameUntil(
+	old: MonoReader,
+	current: MonoReader,
+	offset: number,
+	start: number,
+	step: 1 | -1,
+	most: number,
+): number {
+	let last = start - step;
+	let unlike = 0;
+	for (let n = 0, i = start; n < most; n++, i += step) {
+		if (i < 0 || i >= current.length || i + offset < 0 || i + offset >= old.length) break;
+		if (Math.abs(current.at(i) - old.at(i + offset)) <= SAME) {
+			last = i;
+			unlike = 0;
+		} else if (++unlike >= ENOUGH) break;
+	}
+	return last;
+}
+
+/** True where two soundtracks are the same to the last sample. */
+export function sameSoundtrack(old: Samples, current: Samples): boolean {
+	if (old.sampleRate !== current.sampleRate || old.channels.length !== current.channels.length) return false;
+	return old.channels.every((channel, c) => {
+		const other = current.channels[c];
+		if (channel.length !== other.length) return false;
+		for (let i = 0; i < channel.length; i++) if (channel[i] !== other[i]) return false;
+		return true;
+	});
+}
