@@ -2,7 +2,7 @@
 import type { BarLikeness } from "./describe-bars.ts";
 
 /** Mean likeness along the best diagonal from which two sections count as the same music. */
-const SAME = 0.66;
+const SAME = 0.5;
 /** Share of the shorter section that a diagonal must cover: same music, other length, is allowed. */
 const COVER = 0.75;
 

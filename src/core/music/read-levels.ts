@@ -11,7 +11,7 @@ const ODDS_LIMIT = 5;
 /** Log-odds from which a beat at a level is worth having: training weighed beats three times (ln 3), and a little. */
 const BEAT_WORTH = 1.5;
 /** Weight of what bars gain beside what beats gain. */
-const BARS_IN_LEVEL = 0.25;
+const BARS_IN_LEVEL = 0.4;
 /** What changing over from one reading to another costs: about as much as ten good beats bring. */
 const CHANGE = 25;
 /** Seconds between places where a change may come. */
