@@ -2,22 +2,20 @@
 import { StarstaveError } from "../core/units/index.ts";
 import { type Answer, giveAnswer, requireAnswerPlace } from "./answer.ts";
 import { type Arguments, type CommandShape, readArguments, usage } from "./arguments.ts";
-import { analyseShape, runAnalyse } from "./commands/analyse.ts";
-import { checkShape, runCheck } from "./commands/check.ts";
-import { draftShape, runDraft } from "./commands/draft.ts";
-import { handoffShape, runHandoff } from "./commands/handoff.ts";
 import { createProgress, type Progress } from "./progress.ts";
+import { analyseShape, checkShape, draftShape, handoffShape } from "./shapes.ts";
 
 interface Command {
 	readonly shape: CommandShape;
-	run(given: Arguments, progress: Progress): Promise<Answer>;
+	/** Fetches the command when it is asked for: a wrong flag is answered without a planner. */
+	load(): Promise<(given: Arguments, progress: Progress) => Promise<Answer>>;
 }
 
 const COMMANDS: readonly Command[] = [
-	{ shape: analyseShape, run: runAnalyse },
-	{ shape: draftShape, run: runDraft },
-	{ shape: checkShape, run: runCheck },
-	{ shape: handoffShape, run: runHandoff },
+	{ shape: analyseShape, load: async () => (await import("./commands/analyse.ts")).runAnalyse },
+	{ shape: draftShape, load: async () => (await import("./commands/draft.ts")).runDraft },
+	{ shape: checkShape, load: async () => (await import("./commands/check.ts")).runCheck },
+	{ shape: handoffShape, load: async () => (await import("./commands/handoff.ts")).runHandoff },
 ];
 
 function overview(): string {
@@ -68,7 +66,8 @@ async function main(words: readonly string[]): Promise<number> {
 	try {
 		const given = readArguments(command.shape, rest);
 		requireAnswerPlace(given);
-		const answer = await command.run(given, progress);
+		const run = await command.load();
+		const answer = await run(given, progress);
 		progress.end();
 		giveAnswer(answer, given);
 		return answer.code;

@@ -33,7 +33,8 @@ export async function planLegs(
 	const seconds: Record<string, number> = {};
 	let client: WorkerClient | null = null;
 	const planInWorker: PlanOne = (problem) => {
-		client ??= createNodeWorkers(new URL("./worker.mjs", import.meta.url));
+		// Commands are bundled into chunks/, one below the worker.
+		client ??= createNodeWorkers(new URL("../worker.mjs", import.meta.url));
 		return client.run("plan", { problem });
 	};
 	const planHere: PlanOne = async (problem) => planLeg(problem);

@@ -35,6 +35,7 @@ describe("a soundtrack that can't be used says why", () => {
 		put("good.wav", makeTrack({ seconds: 6 }));
 		put("words.mp3", "these are words, not music\n".repeat(40));
 		put("empty.wav", "");
+		put("song.m4a", readFileSync(new URL("../core/decode/fixtures/pulses.m4a", import.meta.url)));
 		put("cut.mp3", Uint8Array.from([0x49, 0x44, 0x33, 4, 0, 0, 0, 0, 0, 0, 0xff, 0xfb, 0x90, 0x64, 0, 0]));
 	});
 
@@ -42,6 +43,7 @@ describe("a soundtrack that can't be used says why", () => {
 		["not audio", "words.mp3", /^words\.mp3 is not audio that can be read: .*WAV, MP3/],
 		["empty", "empty.wav", /^empty\.wav is empty: /],
 		["an MP3 that ends within its first frame", "cut.mp3", /cut\.mp3/],
+		["AAC, which only a browser decodes", "song.m4a", /^song\.m4a .*AAC.*browser/],
 		["missing", "nowhere.wav", /^nowhere\.wav can't be read: there is no such file or folder\.$/],
 		["a folder", ".", /^\. can't be read: it is a folder\.$/],
 	])("%s", (_name, file, sentence) => {

@@ -138,6 +138,17 @@ describe("check", () => {
 		expect(Array.isArray(check.flashes)).toBe(true);
 	});
 
+	it("plans a large fleet in workers", () => {
+		const grid = { kind: "grid", columns: 20, rows: 20, pitch: 3 };
+		const formations = [{ id: "f1", shape: grid, place: { position: [0, 40, 40] } }];
+		const show = { format: "starstave-show", version: 1, fleet: { count: 400 }, opening: "f1", formations };
+		writeFileSync(path("large.starstave.json"), JSON.stringify(show));
+		const result = run("check", "large.starstave.json", "--json", "-");
+		expect([0, 2]).toContain(result.code);
+		expect(json(result).launch.verdicts).toContain("flies");
+		expect(json(result).timing.plan.launch).toBeGreaterThan(0);
+	});
+
 	it("exits 2 where a transition has too little time, and says which", () => {
 		const show = JSON.parse(readFileSync(path("piece.starstave.json"), "utf8"));
 		const cue = show.cues.find((one: { kind: string }) => one.kind === "transition");

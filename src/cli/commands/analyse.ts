@@ -1,16 +1,7 @@
 import type { Answer } from "../answer.ts";
-import type { Arguments, CommandShape } from "../arguments.ts";
+import type { Arguments } from "../arguments.ts";
 import type { Progress } from "../progress.ts";
 import { hearFile, type Track } from "../tracks.ts";
-
-export const analyseShape: CommandShape = {
-	name: "analyse",
-	summary: "hear a soundtrack: beats, bars, sections, loudness",
-	operands: ["TRACK"],
-	flags: [{ name: "--json", value: "FILE|-", help: "write the answer as JSON to a file, or to stdout" }],
-	required: [],
-	more: ["Seconds count from the first sample. WAV, MP3, FLAC, Ogg Vorbis, Opus (AAC: in the browser alone)."],
-};
 
 /** What is heard in a track, under the keys of the JSON answer. */
 export function describeTrack({ soundtrack, analysis, samples, timing }: Track) {

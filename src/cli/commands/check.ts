@@ -2,23 +2,11 @@ import type { TransitionCheck } from "../../core/flight/index.ts";
 import { flashSentence } from "../../core/handoff/index.ts";
 import { find, type Show } from "../../core/show/index.ts";
 import type { Answer } from "../answer.ts";
-import type { Arguments, CommandShape } from "../arguments.ts";
+import type { Arguments } from "../arguments.ts";
 import { type Flown, flyWhole } from "../fly.ts";
 import type { Progress } from "../progress.ts";
 import { readShowFile } from "../shows.ts";
 import { hearCurves } from "../tracks.ts";
-
-export const checkShape: CommandShape = {
-	name: "check",
-	summary: "feasibility of a whole show; 2 when any part of it can't be flown",
-	operands: ["SHOW"],
-	flags: [
-		{ name: "--soundtrack", value: "FILE", help: "the show's audio, where it doesn't lie beside the show" },
-		{ name: "--json", value: "FILE|-", help: "write the answer as JSON to a file, or to stdout" },
-	],
-	required: [],
-	more: ["The answer counts launch, every transition, landing, every formation and endurance; flashes are a warning."],
-};
 
 /** The check under the keys of the JSON answer. */
 export function describeCheck(flown: Flown) {

@@ -1,32 +1,12 @@
 import { roughCut } from "../../core/draft/index.ts";
 import { toList } from "../../core/show/index.ts";
 import type { Answer } from "../answer.ts";
-import { type Arguments, type CommandShape, numberFlag } from "../arguments.ts";
+import { type Arguments, numberFlag } from "../arguments.ts";
 import { flyWhole } from "../fly.ts";
 import type { Progress } from "../progress.ts";
 import { requireShowPlace, writeShowFile } from "../shows.ts";
 import { hearFile } from "../tracks.ts";
 import { checkLines, describeCheck } from "./check.ts";
-
-export const draftShape: CommandShape = {
-	name: "draft",
-	summary: "a rough cut: a show for a soundtrack, ready to fly and to be worked over",
-	operands: ["TRACK"],
-	flags: [
-		{ name: "--drones", value: "N", help: "drones in the fleet" },
-		{
-			name: "--out",
-			value: "SHOW",
-			help: "where the show goes: *.starstave.json, or *.starstave with the soundtrack in it",
-		},
-		{ name: "--title", value: "TITLE", help: "the show's title; the soundtrack's name unless given" },
-		{ name: "--seed", value: "N", help: "another number, another cut of the same music; 1 unless given" },
-		{ name: "--force", value: null, help: "replace the show that stands there" },
-		{ name: "--json", value: "FILE|-", help: "write the answer as JSON to a file, or to stdout" },
-	],
-	required: ["--drones", "--out"],
-	more: [],
-};
 
 export async function runDraft(given: Arguments, progress: Progress): Promise<Answer> {
 	const [path] = given.operands;

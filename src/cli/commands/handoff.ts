@@ -8,30 +8,12 @@ import {
 } from "../../core/handoff/index.ts";
 import { StarstaveError } from "../../core/units/index.ts";
 import type { Answer } from "../answer.ts";
-import { type Arguments, type CommandShape, numberFlag } from "../arguments.ts";
+import { type Arguments, numberFlag } from "../arguments.ts";
 import { requireEmptyFolder, writeFolder } from "../files.ts";
 import { flyWhole } from "../fly.ts";
 import type { Progress } from "../progress.ts";
 import { readShowFile } from "../shows.ts";
 import { hearCurves } from "../tracks.ts";
-
-export const handoffShape: CommandShape = {
-	name: "handoff",
-	summary: "every file for the crew; 2 when the show can't be flown, and nothing is written",
-	operands: ["SHOW"],
-	flags: [
-		{ name: "--out", value: "DIR", help: "an empty or new folder" },
-		{ name: "--rate", value: "10", help: "positions a second in the flight paths" },
-		{ name: "--light-rate", value: "50", help: "colours a second" },
-		{ name: "--timecode", value: "25", help: `frames a second: ${TIMECODE_RATES.join(", ")} (29.97 drop-frame)` },
-		{ name: "--timecode-start", value: "01:00:00:00", help: "timecode of the soundtrack's first sample" },
-		{ name: "--draft", value: null, help: "hand off what can't be flown too, without flight paths and light" },
-		{ name: "--soundtrack", value: "FILE", help: "the show's audio, where it doesn't lie beside the show" },
-		{ name: "--json", value: "FILE|-", help: "write the answer as JSON to a file, or to stdout" },
-	],
-	required: ["--out"],
-	more: ["Where the rate is too coarse for the file to be proven, it is raised, and that is said."],
-};
 
 function timecodeOf(given: Arguments): Timecode {
 	const rate = given.values.get("--timecode") ?? "25";
