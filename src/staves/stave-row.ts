@@ -1,6 +1,5 @@
 import type { Analysis } from "../core/music/index.ts";
 import { drawRow, type RowPicture } from "./draw-row.ts";
-import type { RowWindow } from "./row-layout.ts";
 import { peaksOnBeats, Waveform } from "./waveform.ts";
 
 /** One line of the staves in the page: its head, its waveform and the canvas over it. */
@@ -26,7 +25,11 @@ export class StaveRow {
 		this.body.className = "stave-body";
 		this.wave.className = "stave-wave";
 		this.canvas.className = "stave-lanes";
-		this.head.append(this.letter, this.bar);
+		// Seen: "A" over "1"; heard: "A, from bar 1".
+		const between = document.createElement("span");
+		between.className = "unseen";
+		between.textContent = ", from bar ";
+		this.head.append(this.letter, between, this.bar);
 		this.body.append(this.wave, this.canvas, this.name);
 		this.element.append(this.head, this.body);
 		this.head.addEventListener("click", onHead);
@@ -40,7 +43,6 @@ export class StaveRow {
 		this.letter.textContent = row.letter;
 		this.bar.textContent = String(row.bar);
 		this.name.textContent = row.name;
-		this.head.setAttribute("aria-label", headWords(row));
 		this.head.setAttribute("aria-pressed", String(selected));
 		this.head.disabled = row.section === null;
 		this.body.style.width = `${width}px`;
@@ -74,9 +76,4 @@ export class StaveRow {
 		this.waveform.clear();
 		this.element.remove();
 	}
-}
-
-function headWords(row: RowWindow): string {
-	const section = row.letter ? `Section ${row.letter}${row.name ? `, ${row.name}` : ""}` : "Line";
-	return `${section}, from bar ${row.bar}`;
 }

@@ -32,8 +32,7 @@ export function VerdictMark({ verdict, words }: { verdict: Verdict | null; words
 				width={32}
 				height={32}
 				className="verdict-mark"
-				role="img"
-				aria-label={words ? "" : sayVerdict(verdict)}
+				{...(words ? { "aria-hidden": true } : { role: "img", "aria-label": sayVerdict(verdict) })}
 			/>
 			{words && sayVerdict(verdict)}
 		</span>
