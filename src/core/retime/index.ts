@@ -1,3 +1,5 @@
+export { describeShift } from "./carry-cue.ts";
+export { moveEdge } from "./correct-map.ts";
 export {
 	type AnchorPair,
 	type EditMap,
@@ -10,3 +12,14 @@ export {
 } from "./edit-map.ts";
 export { type MapOptions, mapEdit } from "./map-edit.ts";
 export { type Place, placesOf } from "./places.ts";
+export { compareTransitions, type RetimeReceipt, type TransitionReceipt } from "./receipt.ts";
+export { type RetimeAnswer, retimeAnswer } from "./retime-answer.ts";
+export {
+	type CueMove,
+	type CueOffer,
+	type HeardMusic,
+	type RetimedShow,
+	type RetimeResult,
+	retimeShow,
+	type TrayCue,
+} from "./retime-show.ts";
