@@ -1,9 +1,10 @@
 import type { StoreApi } from "zustand/vanilla";
-import type { LegProblem, Plan, ShowCheck, ShowFlight } from "../core/flight/index.ts";
+import type { LegProblem, Plan, ShowFlight } from "../core/flight/index.ts";
 import { compileLight } from "../core/light/index.ts";
 import { createBeatMap, endOfShow, type FleetSlots, type Show } from "../core/show/index.ts";
+import { StarstaveError } from "../core/units/index.ts";
 import type { Player } from "../platform/player.ts";
-import type { WorkerClient } from "../workers/index.ts";
+import type { JobAnswer, WorkerClient } from "../workers/index.ts";
 import type { JobLedger } from "./job-ledger.ts";
 import type { Keeper } from "./keeper.ts";
 import { basisOf, changedLegs, type LegBasis, sameBasis } from "./leg-basis.ts";
@@ -77,7 +78,7 @@ export function createFeasibility({ store, workers, player, ledger, keeper, noti
 		laid = null;
 		assembled = null;
 		checked = null;
-		store.setState({ slots: null, ground: null, flight: null, light: null, check: null, unchecked: NONE });
+		store.setState({ slots: null, ground: null, flight: null, light: null, check: null, flashes: [], unchecked: NONE });
 	};
 
 	/** Puts a flight into the store, with the light that goes with it. */
@@ -150,10 +151,17 @@ export function createFeasibility({ store, workers, player, ledger, keeper, noti
 		flight: ShowFlight,
 		keys: readonly string[],
 		slots: ReadonlyMap<string, FleetSlots>,
-	): Promise<ShowCheck> =>
-		ledger.run("Proving the flight", (signal) => workers.run("check", { show, slots, flight, keys }, { signal }), {
-			quiet: true,
-		});
+	): Promise<JobAnswer<"check">> =>
+		ledger.run(
+			"Proving the flight",
+			(signal) => {
+				const curves = store.getState().analysis?.curves ?? null;
+				return workers.run("check", { show, slots, flight, keys, curves }, { signal });
+			},
+			{
+				quiet: true,
+			},
+		);
 
 	/** One round. @returns false where the show changed meanwhile, so that another is due */
 	const round = async (): Promise<boolean> => {
@@ -181,31 +189,31 @@ export function createFeasibility({ store, workers, player, ledger, keeper, noti
 		await new Promise((resolve) => setTimeout(resolve, QUIET));
 		if (started !== turn) return false;
 		const { basis } = laid;
-		const check = await prove(show, flight, assembled.keys, laid.slots);
+		const { check, flashes } = await prove(show, flight, assembled.keys, laid.slots);
 		if (started !== turn) return false;
 		checked = basis;
-		store.setState({ check, unchecked: NONE });
+		store.setState({ check, flashes, unchecked: NONE });
 		return true;
 	};
 
 	const run = async (): Promise<void> => {
 		for (;;) {
+			const asked = turn;
 			try {
 				if (await round()) {
 					retried = false;
 					return;
 				}
 			} catch (error) {
+				// What went wrong with a show that has changed since is nobody's concern.
+				if (asked !== turn) continue;
 				if (isCancelled(error)) {
-					notices.say(
-						"caution",
-						"Planning was cancelled: verdicts are open until the show is checked again.",
-						"feasibility",
-					);
+					const text = "Planning was cancelled: verdicts are open until the show is checked again.";
+					notices.say("caution", text, "feasibility");
 					return;
 				}
 				// A plan from the browser's own store may be for another problem than its key says: plan anew, once.
-				if (!retried) {
+				if (!retried && error instanceof StarstaveError && error.area === "flight") {
 					retried = true;
 					cache.clear();
 					laid = null;

@@ -15,6 +15,7 @@ const ELSEWHERE =
 export async function restore(bench: Workbench): Promise<boolean> {
 	const { store, notices, keeper, parts } = bench;
 	const lease = await parts.takeLease();
+	bench.lease = lease;
 	if (!lease.held) {
 		store.setState({ readOnly: ELSEWHERE });
 		void lease.later.then(async () => {

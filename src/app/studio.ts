@@ -51,6 +51,7 @@ export function createStudio(parts: StudioParts): Studio {
 		light: null,
 		flight: null,
 		check: null,
+		flashes: [],
 		unchecked: new Set(),
 		playback: parts.player.state,
 		selection: { kind: "nothing" },
@@ -106,6 +107,7 @@ export function createStudio(parts: StudioParts): Studio {
 			await keeper.flush();
 			ledger.cancelAll();
 			workers.close();
+			bench.lease?.release();
 			await player.close();
 		},
 	};

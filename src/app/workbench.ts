@@ -2,6 +2,7 @@ import type { StoreApi } from "zustand/vanilla";
 import { applyEdit, type DraftShow, type Show } from "../core/show/index.ts";
 import { StarstaveError } from "../core/units/index.ts";
 import type { NamedBytes } from "../platform/files.ts";
+import type { Lease } from "../platform/lease.ts";
 import type { Feasibility } from "./feasibility.ts";
 import { createHistory, type History } from "./history.ts";
 import type { JobLedger } from "./job-ledger.ts";
@@ -21,6 +22,8 @@ export interface Workbench {
 	readonly feasibility: Feasibility;
 	/** The soundtrack's file as the client gave it. */
 	soundtrack: NamedBytes | null;
+	/** This tab's leave to write; null until it has asked. */
+	lease: Lease | null;
 	/** Ends a drag that is under way, as if it were let go of; an edit from elsewhere must not be lost in it. */
 	endDrag: () => void;
 	/**
@@ -46,6 +49,7 @@ export function createWorkbench(built: Built): Workbench {
 		...built,
 		history,
 		soundtrack: null,
+		lease: null,
 		endDrag: () => {},
 		mayEdit: () => {
 			const { readOnly, show } = store.getState();

@@ -2,8 +2,17 @@ import type { Samples } from "../core/decode/index.ts";
 import type { RoughCut, RoughCutOptions } from "../core/draft/index.ts";
 import type { Leg, LegProblem, Plan, ProofCache, ShowCheck, ShowFlight } from "../core/flight/index.ts";
 import type { HandoffOptions } from "../core/handoff/index.ts";
+import type { Flash } from "../core/light/index.ts";
 import type { Analysis } from "../core/music/index.ts";
-import type { Curve, FleetSlots, PackedShow, Show, Soundtrack } from "../core/show/index.ts";
+import {
+	type Curve,
+	createBeatMap,
+	endOfShow,
+	type FleetSlots,
+	type PackedShow,
+	type Show,
+	type Soundtrack,
+} from "../core/show/index.ts";
 
 /**
  * Everything that runs in a worker, each a plain call into the core: the same functions run on the command line and in
@@ -110,13 +119,23 @@ export interface CheckAsk {
 	readonly flight: ShowFlight;
 	/** Key of each leg's plan. */
 	readonly keys: readonly string[];
+	/** Of the music; null where it is not at hand, so that flashes of what follows it can't be judged. */
+	readonly curves: readonly Curve[] | null;
+}
+
+export interface CheckAnswer {
+	readonly check: ShowCheck;
+	readonly flashes: readonly Flash[];
 }
 
 /** What this worker has proven, with the plans as it knows them: a plan that comes again is told by its content. */
 const proofs: ProofCache = new Map();
 
-async function check({ show, slots, flight, keys }: CheckAsk): Promise<ShowCheck> {
-	const { checkShow } = await import("../core/flight/index.ts");
+async function check({ show, slots, flight, keys, curves }: CheckAsk): Promise<CheckAnswer> {
+	const [{ checkShow }, { compileLight, findFlashes }] = await Promise.all([
+		import("../core/flight/index.ts"),
+		import("../core/light/index.ts"),
+	]);
 	const plans = new Map<string, Plan>();
 	const legs = flight.legs.map((leg, index) => {
 		const proven = proofs.get(keys[index]);
@@ -126,7 +145,10 @@ async function check({ show, slots, flight, keys }: CheckAsk): Promise<ShowCheck
 	});
 	const answer = checkShow(show, slots, { ...flight, legs }, plans, proofs);
 	for (const key of proofs.keys()) if (!plans.has(key)) proofs.delete(key);
-	return answer;
+	const light = compileLight(show, flight.stays, slots, curves ?? []);
+	const end = endOfShow(show, createBeatMap(show.grid));
+	const flashes = findFlashes(light, Math.min(0, flight.begins), Math.max(end, flight.ends));
+	return { check: answer, flashes };
 }
 
 /** True where two plans fly the same paths by the same law to the last bit. */

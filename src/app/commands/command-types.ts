@@ -24,7 +24,8 @@ export interface ShowCommands {
 	newShow(drones: number): boolean;
 	/**
 	 * A soundtrack or a show, told by content. A soundtrack goes into the open show where that has none, or where it is
-	 * the very one that the show names; else it begins a new show. The show that stood here can be brought back.
+	 * the very one that the show names; else it begins a new show. The show that stood here can be brought back. A drawing
+	 * (SVG) or points (CSV) become a formation of the open show.
 	 */
 	openFile(file: File): Promise<boolean>;
 	openDemo(): Promise<boolean>;

@@ -12,20 +12,14 @@ import type { FormationCommands } from "./command-types.ts";
 
 /** Edits of formations. */
 export function formationCommands(bench: Workbench): FormationCommands {
-	const { store, notices, ledger, parts } = bench;
+	const { store } = bench;
 	const called = (id: string): string => {
 		const { show } = store.getState();
 		const name = show === null ? "" : find(show.formations, id)?.name;
 		return name ? `formation ${name}` : "formation";
 	};
-	const add = (name: string, formation: NewFormation): string | null => {
-		const id = bench.edit(name, (draft) => addFormation(draft, formation));
-		if (typeof id !== "string") return null;
-		store.setState({ selection: { kind: "formation", id } });
-		return id;
-	};
 	return {
-		addFormation: (formation) => add("Add formation", formation),
+		addFormation: (formation) => add(bench, "Add formation", formation),
 		changeFormation: (id, change) =>
 			bench.edit(`Change ${called(id)}`, (draft) => changeFormation(draft, id, change)) !== null,
 		copyFormation: (id) => {
@@ -34,22 +28,34 @@ export function formationCommands(bench: Workbench): FormationCommands {
 		},
 		removeFormation: (id) => bench.edit(`Remove ${called(id)}`, (draft) => removeFormation(draft, id)) !== null,
 		setOpening: (id) => bench.edit("Choose the opening", (draft) => setOpening(draft, id)) !== null,
-		addFormationFrom: async (file) => {
-			if (!bench.mayEdit()) return null;
-			try {
-				const text = await file.text();
-				const { fleet } = store.getState().show!;
-				const shape = await ledger.run(
-					`Reading ${file.name}`,
-					(signal) => parts.workers.run("readShape", { name: file.name, text, count: fleet.count }, { signal }),
-					{ quiet: true },
-				);
-				const name = file.name.replace(/\.[^.]*$/, "");
-				return add(`Add formation ${name}`, { name, ...shape });
-			} catch (error) {
-				notices.sayError(error);
-				return null;
-			}
-		},
+		addFormationFrom: (file) => addFormationFrom(bench, file),
 	};
+}
+
+/** A file with a drawing or with points becomes a formation. @returns its id, null where it was refused */
+export async function addFormationFrom(bench: Workbench, file: File): Promise<string | null> {
+	const { store, notices, ledger, parts } = bench;
+	if (!bench.mayEdit()) return null;
+	try {
+		const text = await file.text();
+		const { fleet } = store.getState().show!;
+		const made = await ledger.run(
+			`Reading ${file.name}`,
+			(signal) => parts.workers.run("readShape", { name: file.name, text, count: fleet.count }, { signal }),
+			{ quiet: true },
+		);
+		const name = file.name.replace(/\.[^.]*$/, "");
+		return add(bench, `Add formation ${name}`, { name, ...made });
+	} catch (error) {
+		notices.sayError(error);
+		return null;
+	}
+}
+
+/** The new formation is selected. */
+function add({ edit, store }: Workbench, name: string, formation: NewFormation): string | null {
+	const id = edit(name, (draft) => addFormation(draft, formation));
+	if (typeof id !== "string") return null;
+	store.setState({ selection: { kind: "formation", id } });
+	return id;
 }

@@ -4,6 +4,7 @@ import { analysisOnGrid } from "../heard-grid.ts";
 import { hearOwn, openShow, openSoundtrack, replaceShow } from "../open-show.ts";
 import type { Workbench } from "../workbench.ts";
 import type { ShowCommands } from "./command-types.ts";
+import { addFormationFrom } from "./formation-commands.ts";
 
 /** Opening, saving, the rough cut and the hand-off. */
 export function showCommands(bench: Workbench): ShowCommands {
@@ -37,6 +38,7 @@ export function showCommands(bench: Workbench): ShowCommands {
 		},
 		openFile: (file) =>
 			attempt(async () => {
+				if (/\.(svg|csv)$/i.test(file.name)) return (await addFormationFrom(bench, file)) !== null;
 				if (!mayReplace()) return false;
 				const named = { name: file.name, bytes: new Uint8Array(await file.arrayBuffer()) };
 				if (looksLikeShow(named.bytes)) await openShow(bench, named, null);
@@ -121,7 +123,9 @@ export function showCommands(bench: Workbench): ShowCommands {
 				}
 				const curves = analysis?.curves ?? [];
 				const timecode = { rate: options.timecode?.rate ?? "25", start: options.timecode?.start ?? "01:00:00:00" };
-				const ask = { show, slots, flight, check, curves, options: { ...options, timecode } };
+				const missing = "The soundtrack was not at hand, so flashes of what follows the music can't be judged.";
+				const notes = analysis === null && show.soundtrack !== null ? [missing] : [];
+				const ask = { show, slots, flight, check, curves, options: { ...options, timecode, notes } };
 				const answer = await ledger.run("Writing the hand-off", (signal, onProgress) =>
 					parts.workers.run("handoff", ask, { signal, onProgress }),
 				);
