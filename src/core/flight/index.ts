@@ -1,3 +1,13 @@
 export type { FormationCheck, ShowCheck, TransitionCheck } from "./check.ts";
+export { straightTime } from "./law/straight-time.ts";
+export { lawAt, lawDuration } from "./law/time-law.ts";
+export type { LegProblem, PlanProgress } from "./leg-problem.ts";
 export type { AssignmentCertificate, Plan, Proof, Remedy, TimeLaw, Verdict } from "./plan.ts";
+export { PLANNER_VERSION, planLeg } from "./plan-leg.ts";
+export { neededTime, type PlanProof, provePlan } from "./proof/prove-plan.ts";
+export { assembleFlight } from "./show/assemble-flight.ts";
+export { checkShow, type ProofCache } from "./show/check-show.ts";
+export { dronePositions } from "./show/drone-positions.ts";
+export { type FlownShow, flyShow } from "./show/fly-show.ts";
+export { legProblems, openingOf, withKey } from "./show/leg-problems.ts";
 export type { Leg, ShowFlight } from "./show-flight.ts";

@@ -1,3 +1,4 @@
+export { bernsteinMatrix, binomials, halve } from "./bernstein.ts";
 export { resample, resampleMix } from "./resample.ts";
 export { createRandom, type SeededRandom } from "./seeded-random.ts";
 export { createSha256, type Sha256, sha256Hex } from "./sha256.ts";
