@@ -3,7 +3,7 @@ import { StarstaveError } from "../core/units/index.ts";
 import { type Answer, giveAnswer, requireAnswerPlace } from "./answer.ts";
 import { type Arguments, type CommandShape, readArguments, usage } from "./arguments.ts";
 import { createProgress, type Progress } from "./progress.ts";
-import { analyseShape, checkShape, draftShape, handoffShape } from "./shapes.ts";
+import { analyseShape, checkShape, draftShape, handoffShape, retimeShape } from "./shapes.ts";
 
 interface Command {
 	readonly shape: CommandShape;
@@ -15,6 +15,7 @@ const COMMANDS: readonly Command[] = [
 	{ shape: analyseShape, load: async () => (await import("./commands/analyse.ts")).runAnalyse },
 	{ shape: draftShape, load: async () => (await import("./commands/draft.ts")).runDraft },
 	{ shape: checkShape, load: async () => (await import("./commands/check.ts")).runCheck },
+	{ shape: retimeShape, load: async () => (await import("./commands/retime.ts")).runRetime },
 	{ shape: handoffShape, load: async () => (await import("./commands/handoff.ts")).runHandoff },
 ];
 

@@ -43,6 +43,20 @@ export const checkShape: CommandShape = {
 	more: ["The answer counts launch, every transition, landing, every formation and endurance; flashes are a warning."],
 };
 
+export const retimeShape: CommandShape = {
+	name: "retime",
+	summary: "carry the cues over to a new edit of the soundtrack; 2 when anything needs review",
+	operands: ["SHOW", "TRACK"],
+	flags: [
+		{ name: "--out", value: "SHOW", help: "where the retimed show goes; the old one is left as it is" },
+		{ name: "--soundtrack", value: "FILE", help: "the show's old audio, where it doesn't lie beside the show" },
+		{ name: "--force", value: null, help: "replace the show that stands there" },
+		{ name: "--json", value: "FILE|-", help: "write the answer as JSON to a file, or to stdout" },
+	],
+	required: ["--out"],
+	more: ["TRACK is the new edit. Both soundtracks are heard, so the old one must be at hand."],
+};
+
 export const handoffShape: CommandShape = {
 	name: "handoff",
 	summary: "every file for the crew; 2 when the show can't be flown, and nothing is written",

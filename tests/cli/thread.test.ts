@@ -310,6 +310,42 @@ describe("retime", () => {
 		expect(result.code).toBe(0);
 	});
 
+	it("carries the cues over a cut to the sample, and exits 2 for what needs review", () => {
+		// Bars 5 to 8 are gone: seconds 8 to 16.
+		const whole = readFileSync(path("piece.wav"));
+		const second = 22050 * 4;
+		writeFileSync(
+			path("cut.wav"),
+			Buffer.concat([whole.subarray(0, 44 + 8 * second), whole.subarray(44 + 16 * second)]),
+		);
+		const words = ["retime", "piece.starstave.json", "cut.wav", "--out", "cut.starstave.json", "--json", "-"];
+		const result = run(...words);
+		const { map, cues } = json(result);
+		expect(map.map(({ kind }: { kind: string }) => kind)).toEqual(["kept", "cut", "kept"]);
+		for (const { oldTime, newTime, status } of cues) {
+			if (status !== "moved") continue;
+			expect(newTime).toBeCloseTo(oldTime < 12 ? oldTime : oldTime - 8, 3);
+		}
+		const unsettled = cues.filter(({ status }: { status: string }) => status !== "moved").length;
+		expect(result.code).toBe(unsettled > 0 ? 2 : 0);
+		const show = JSON.parse(readFileSync(path("cut.starstave.json"), "utf8"));
+		expect(show.soundtrack.file).toBe("cut.wav");
+		expect(show.retimedFrom.file).toBe("piece.wav");
+		const orphans = cues.filter(({ status }: { status: string }) => status === "orphan").length;
+		expect(show.cues.length).toBe(cues.length - orphans);
+	});
+
+	it("moves nothing and writes nothing for another piece altogether", () => {
+		writeFileSync(path("other.wav"), makeTrack({ seconds: 20, bpm: 91 }));
+		const result = run("retime", "piece.starstave.json", "other.wav", "--out", "other.starstave.json", "--json", "-");
+		const { verdict, cues } = json(result);
+		expect(result.code).toBe(2);
+		if (verdict === "different") {
+			for (const { oldTime, newTime } of cues) expect(newTime).toBe(oldTime);
+			expect(readdirSync(path("."))).not.toContain("other.starstave.json");
+		}
+	});
+
 	it("wants the old soundtrack, and says where it looks for it", () => {
 		const result = run("retime", "apart/piece.starstave.json", "piece.wav", "--out", "new.starstave.json");
 		expect(result.code).toBe(1);
