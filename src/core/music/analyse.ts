@@ -9,7 +9,7 @@ import { findBoundaries } from "./find-sections.ts";
 import { fluxActivation } from "./flux.ts";
 import { followBeats } from "./follow-beats.ts";
 import { hearHarmony } from "./harmony.ts";
-import { type Loudness, measureLoudness, SILENCE } from "./loudness.ts";
+import { type Loudness, measureLoudness } from "./loudness.ts";
 import { findMoments } from "./moments.ts";
 import { nameSections } from "./name-sections.ts";
 import { type PlacedBeats, placeBeats } from "./place-beats.ts";
@@ -20,8 +20,8 @@ export const ANALYSIS_VERSION = 1;
 /** LU below the integrated loudness (and LUFS at all) under which there is nothing to beat time to. */
 const QUIET = -35;
 /** Confidence below which beats are given only with a word of caution, and none at all. */
-const DOUBTFUL = 0.25;
-const NO_BEAT = 0.06;
+const DOUBTFUL = 0.35;
+const NO_BEAT = 0.12;
 
 export interface AnalyseOptions {
 	/** Called with 0..1 and what is being done, at least twenty times a track. */
@@ -56,7 +56,8 @@ export function analyse(sound: Sound, options: AnalyseOptions = {}): Analysis {
 	const harmony = hearHarmony(mono);
 	const walk = followBeats(activation, harmony, within(0.5, 0.9, "beats"));
 	const notes: string[] = [];
-	const placed = judge(placeBeats(activation, walk, soundingNear(loudness)), loudness, notes);
+	const sounding = findSound(loudness);
+	const placed = judge(placeBeats(activation, walk, soundingNear(sounding, loudness.rate)), loudness, sounding, notes);
 	tell(0.9, "sections");
 	const curves = drawCurves(bands, loudness);
 	const edges = placed.bars.length > 0 ? barEdges(placed, length / sampleRate) : new Float64Array(0);
@@ -76,7 +77,7 @@ export function analyse(sound: Sound, options: AnalyseOptions = {}): Analysis {
 		bars: placed.bars,
 		sections,
 		moments,
-		confidence: meanOf(placed.confidence),
+		confidence: placed.overall,
 		loudness,
 		curves,
 		peaks,
@@ -98,31 +99,55 @@ function hearMono(channels: readonly Float32Array[], sampleRate: number): Float3
 	return resampleMix([channels[loudest]], sampleRate, HEARING_RATE);
 }
 
-/** Whether anything sounds within a second of a time. */
-function soundingNear(loudness: Loudness): (time: number) => boolean {
+/** Which tenths of a second hold sound. A momentary window looks back 0.4 s, so the newest of them tells first. */
+function findSound(loudness: Loudness): Uint8Array {
 	const gate = Math.max(-70, loudness.integrated + QUIET);
-	const { momentary, rate } = loudness;
+	return Uint8Array.from(loudness.momentary, (x) => (x > gate ? 1 : 0));
+}
+
+/** Whether anything sounds from half a second before a time to a quarter after. */
+function soundingNear(sound: Uint8Array, rate: number): (time: number) => boolean {
 	return (time) => {
-		const last = Math.min(momentary.length - 1, Math.round((time + 1) * rate));
-		for (let i = Math.max(0, Math.round((time - 0.5) * rate)); i <= last; i++) if (momentary[i] > gate) return true;
+		const last = Math.min(sound.length - 1, Math.round((time + 0.25) * rate));
+		for (let i = Math.max(0, Math.round((time - 0.5) * rate)); i <= last; i++) if (sound[i] === 1) return true;
 		return false;
 	};
 }
 
+/** Share of the sound that lies between the first beat and the last. */
+function coverOf(beats: Float64Array, sound: Uint8Array, rate: number): number {
+	if (beats.length < 2) return 0;
+	let heard = 0;
+	let covered = 0;
+	const interval = beats[1] - beats[0];
+	for (let i = 0; i < sound.length; i++) {
+		if (sound[i] === 0) continue;
+		heard++;
+		if (i / rate >= beats[0] - interval && i / rate <= beats[beats.length - 1] + interval) covered++;
+	}
+	return heard > 0 ? covered / heard : 0;
+}
+
 /** Says honestly how far the beats can be trusted, and gives none where they can't be. */
-function judge(placed: PlacedBeats, loudness: Loudness, notes: string[]): PlacedBeats {
-	const none: PlacedBeats = { beats: new Float64Array(0), confidence: new Float32Array(0), bars: [] };
-	if (loudness.momentary.every((x) => x <= Math.max(-70, SILENCE))) {
+function judge(
+	placed: PlacedBeats,
+	loudness: Loudness,
+	sound: Uint8Array,
+	notes: string[],
+): PlacedBeats & { overall: number } {
+	const none = { beats: new Float64Array(0), confidence: new Float32Array(0), bars: [], overall: 0 };
+	if (sound.every((x) => x === 0)) {
 		notes.push("No beat was found: the soundtrack is silent.");
 		return none;
 	}
-	const confidence = meanOf(placed.confidence);
-	if (placed.beats.length < 4 || confidence < NO_BEAT) {
+	// A few beats here and there in half a minute of noise are no pulse, however clear each of them is.
+	const overall = meanOf(placed.confidence) * coverOf(placed.beats, sound, loudness.rate);
+	if (placed.beats.length < 4 || overall < NO_BEAT) {
 		notes.push("No beat was found: nothing in the sound keeps time.");
 		return none;
 	}
-	if (confidence < DOUBTFUL) notes.push("The beat is uncertain: listen to it with the click before placing cues.");
-	return placed;
+	if (overall < DOUBTFUL) notes.push("The beat is uncertain: listen to it with the click before placing cues.");
+	return { ...placed, overall };
 }
 
 /** Beats a minute: the median of the intervals, 0 without beats. */

@@ -5,6 +5,8 @@ import type { BarWalk } from "./follow-beats.ts";
 
 /** Seconds that a beat may move to the activation's peak. */
 const SNAP = 0.045;
+/** Seconds that the activation's peaks lie behind the notes: median over rendered songs whose notes are known. */
+const LATE = 0.0035;
 /** Activation below which a peak is no evidence of where a beat lies. */
 const LEAST_PEAK = 0.08;
 /** Beats on either side over which confidence is judged. */
@@ -54,7 +56,7 @@ export function placeBeats(
 	const heights = new Float64Array(count);
 	for (let k = 0; k < count; k++) {
 		const peak = peakNear(activation, walk.beats[from + k]);
-		beats[k] = peak?.time ?? walk.beats[from + k];
+		beats[k] = Math.max(0, (peak?.time ?? walk.beats[from + k]) - LATE);
 		heights[k] = peak?.height ?? 0;
 	}
 	keepRising(beats);
