@@ -6,12 +6,12 @@ import { HEARING_RATE, hearBands } from "./bands.ts";
 import { drawCurves, drawPeaks } from "./curves.ts";
 import { type BarLikeness, compareBars } from "./describe-bars.ts";
 import { findBoundaries } from "./find-sections.ts";
-import { fluxActivation } from "./flux.ts";
 import { followBeats } from "./follow-beats.ts";
 import { hearHarmony } from "./harmony.ts";
 import { type Loudness, measureLoudness } from "./loudness.ts";
 import { findMoments } from "./moments.ts";
 import { nameSections } from "./name-sections.ts";
+import { levelOut, networkActivation } from "./network/index.ts";
 import { type PlacedBeats, placeBeats } from "./place-beats.ts";
 
 /** Rises whenever the same samples would give another answer. */
@@ -48,17 +48,16 @@ export function analyse(sound: Sound, options: AnalyseOptions = {}): Analysis {
 	tell(0, "loudness");
 	const loudness = measureLoudness(channels, sampleRate);
 	const peaks = drawPeaks(channels, sampleRate);
-	tell(0.15, "listening");
-	const mono = hearMono(channels, sampleRate);
-	const bands = hearBands(mono, within(0.25, 0.5, "listening"));
-	const activation = fluxActivation(bands);
-	tell(0.5, "beats");
+	tell(0.1, "listening");
+	const mono = levelOut(hearMono(channels, sampleRate));
+	const bands = hearBands(mono, within(0.2, 0.3, "listening"));
 	const harmony = hearHarmony(mono);
-	const walk = followBeats(activation, harmony, within(0.5, 0.9, "beats"));
+	const activation = networkActivation(bands, harmony, within(0.4, 0.85, "beats"));
+	const walk = followBeats(activation, harmony, within(0.85, 0.95, "beats"));
 	const notes: string[] = [];
 	const sounding = findSound(loudness);
 	const placed = judge(placeBeats(activation, walk, soundingNear(sounding, loudness.rate)), loudness, sounding, notes);
-	tell(0.9, "sections");
+	tell(0.95, "sections");
 	const curves = drawCurves(bands, loudness);
 	const edges = placed.bars.length > 0 ? barEdges(placed, length / sampleRate) : new Float64Array(0);
 	const likeness = compareBars(bands, harmony, edges);

@@ -9,6 +9,8 @@ const SNAP = 0.045;
 const LATE = 0.0035;
 /** Activation below which a peak is no evidence of where a beat lies. */
 const LEAST_PEAK = 0.08;
+/** Share of the track's middle peak that the first and the last beat must reach. */
+const EVIDENCE = 0.5;
 /** Beats on either side over which confidence is judged. */
 const AROUND = 4;
 
@@ -47,20 +49,24 @@ export function placeBeats(
 	walk: BarWalk,
 	isSounding: (time: number) => boolean,
 ): PlacedBeats {
+	const peaks = Array.from(walk.beats, (time) => peakNear(activation, time));
+	const heights = Float64Array.from(peaks, (peak) => peak?.height ?? 0);
+	const typical = heights.slice().sort()[heights.length >> 1] ?? 0;
+	// The walk goes on for a while where nothing contradicts it: into a last chord's echo, back before a first note.
+	const isBeat = (k: number): boolean => isSounding(walk.beats[k]) && heights[k] > EVIDENCE * typical;
 	let from = 0;
 	let to = walk.beats.length;
-	while (from < to && !isSounding(walk.beats[from])) from++;
-	while (to > from && !isSounding(walk.beats[to - 1])) to--;
-	const count = to - from;
-	const beats = new Float64Array(count);
-	const heights = new Float64Array(count);
-	for (let k = 0; k < count; k++) {
-		const peak = peakNear(activation, walk.beats[from + k]);
-		beats[k] = Math.max(0, (peak?.time ?? walk.beats[from + k]) - LATE);
-		heights[k] = peak?.height ?? 0;
-	}
+	while (from < to && !isBeat(from)) from++;
+	while (to > from && !isBeat(to - 1)) to--;
+	const beats = Float64Array.from({ length: to - from }, (_, k) =>
+		Math.max(0, (peaks[from + k]?.time ?? walk.beats[from + k]) - LATE),
+	);
 	keepRising(beats);
-	return { beats, confidence: judgeBeats(activation, beats, heights), bars: gatherBars(walk, from, to) };
+	return {
+		beats,
+		confidence: judgeBeats(activation, beats, heights.slice(from, to)),
+		bars: gatherBars(walk, from, to),
+	};
 }
 
 /** Snapping moves neighbours by less than half a beat, so this only guards against activations that are broken. */
