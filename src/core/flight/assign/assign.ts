@@ -185,11 +185,7 @@ function widen(
  * match when it is no longer tight.
  * @returns the violated arcs, the worst few of each row
  */
-function priceAll(
-	sets: Sets,
-	matching: Matching,
-	allowed: Allowed | undefined,
-): { rows: number[]; columns: number[] } {
+function priceAll(sets: Sets, matching: Matching, allowed: Allowed | undefined): { rows: number[]; columns: number[] } {
 	const { count, from, to } = sets;
 	const { u, v, columnOf, rowOf } = matching;
 	const offset = new Float64Array(count);

@@ -54,7 +54,11 @@ export function peaksOfFlight(paths: Float64Array, degree: number, count: number
 					for (let kind = 0; kind < 5; kind++) {
 						if (ORDER_OF[kind] !== order) continue;
 						if (pass === 0) {
-							found[kind] = Math.max(found[kind], sizeAt(kind, control, length, 0), sizeAt(kind, control, length, length - 1));
+							found[kind] = Math.max(
+								found[kind],
+								sizeAt(kind, control, length, 0),
+								sizeAt(kind, control, length, length - 1),
+							);
 						} else if (hull(kind, control, length) > found[kind] * (1 + NARROW) + 1e-12) {
 							refine(kind, control.slice(0, 3 * length), length, found);
 						}
@@ -143,7 +147,8 @@ function cellOf(law: number[], span: number, degree: number): Cell {
 			const d = degrees[order - 1];
 			for (let row = 0; row <= d; row++) {
 				let value = 0;
-				for (let m = 0; m <= d && m < derivative.length; m++) value += matrices[order - 1][row * (d + 1) + m] * derivative[m];
+				for (let m = 0; m <= d && m < derivative.length; m++)
+					value += matrices[order - 1][row * (d + 1) + m] * derivative[m];
 				tables[order - 1][k * (d + 1) + row] = value;
 			}
 		}

@@ -108,7 +108,8 @@ function createSearch(paths: Float64Array, degree: number, count: number, downwa
 		if (degree === 1) {
 			// A quadratic: its least lies at an end or at the foot of the perpendicular.
 			const bend = squared[0] - 2 * squared[1] + squared[2];
-			const foot = bend > 0 ? Math.min(1, Math.max(0, (squared[0] - squared[1]) / bend)) : squared[0] <= squared[2] ? 0 : 1;
+			const foot =
+				bend > 0 ? Math.min(1, Math.max(0, (squared[0] - squared[1]) / bend)) : squared[0] <= squared[2] ? 0 : 1;
 			let exact = 0;
 			for (let axis = 0; axis < 3; axis++) {
 				const value = difference[2 * axis] + foot * (difference[2 * axis + 1] - difference[2 * axis]);

@@ -109,7 +109,12 @@ function pairGap(
 				}
 				continue;
 			}
-			const left = { zi: new Float64Array(LAW_WIDTH), zj: new Float64Array(LAW_WIDTH), from: part.from, span: part.span / 2 };
+			const left = {
+				zi: new Float64Array(LAW_WIDTH),
+				zj: new Float64Array(LAW_WIDTH),
+				from: part.from,
+				span: part.span / 2,
+			};
 			const right = {
 				zi: new Float64Array(LAW_WIDTH),
 				zj: new Float64Array(LAW_WIDTH),

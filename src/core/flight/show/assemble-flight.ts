@@ -1,10 +1,4 @@
-import {
-	createBeatMap,
-	endOfShow,
-	type FleetSlots,
-	type Show,
-	type Stay,
-} from "../../show/index.ts";
+import { createBeatMap, endOfShow, type FleetSlots, type Show, type Stay } from "../../show/index.ts";
 import { StarstaveError } from "../../units/index.ts";
 import type { LegProblem } from "../leg-problem.ts";
 import type { Plan } from "../plan.ts";
@@ -20,7 +14,7 @@ const REST = 2;
 
 /**
  * Strings the plans together: launch is over before the music and before the first departure, landing begins when the
- * show is over. The way back over the take-off grid is planned here if `plans` doesn't hold it.
+ * show is over. Sorting the fleet over the take-off grid is planned here if `plans` doesn't hold it.
  * @param plans by key of their problems
  * @throws StarstaveError where a plan is missing
  */
@@ -39,7 +33,10 @@ export function assembleFlight(
 	const planOf = (problem: LegProblem): Plan => {
 		const plan = plans.get(problem.key) ?? (problem.target !== null ? planLeg(problem) : undefined);
 		if (plan !== undefined) return plan;
-		throw new StarstaveError("flight", `The leg ${problem.id} has no plan yet; plan it before the flight is put together.`);
+		throw new StarstaveError(
+			"flight",
+			`The leg ${problem.id} has no plan yet; plan it before the flight is put together.`,
+		);
 	};
 	const unhurried = (problem: LegProblem, plan: Plan): number => {
 		const moving = plan.shortest * UNHURRIED;
@@ -47,7 +44,6 @@ export function assembleFlight(
 	};
 	const timed = timedTransitions(show);
 	const [climb, launch] = problems;
-	const [back, down] = problems.slice(-2);
 	const climbPlan = planOf(climb);
 	const launchPlan = planOf(launch);
 	const first = Math.min(0, timed[0]?.departs ?? 0) - REST;
@@ -72,12 +68,12 @@ export function assembleFlight(
 		stay = { formation: to, arrives, cue: cue.id };
 	}
 	stays.push({ ...stay, departs: Infinity, slotOfDrone: rows });
-	const backPlan = planOf(back);
-	const downPlan = planOf(down);
-	const over = Math.max(endOfShow(show, createBeatMap(show.grid)), stay.arrives, 0) + REST;
-	const above = over + unhurried(back, backPlan);
-	const ends = above + unhurried(down, downPlan);
-	fly(back, backPlan, over, above);
-	fly(down, downPlan, above, ends);
+	let ends = Math.max(endOfShow(show, createBeatMap(show.grid)), stay.arrives, 0) + REST;
+	for (const problem of problems.slice(2 + timed.length)) {
+		const plan = planOf(problem);
+		const departs = ends;
+		ends += unhurried(problem, plan);
+		fly(problem, plan, departs, ends);
+	}
 	return { drones: count, legs, stays, begins, ends, ground };
 }

@@ -8,6 +8,8 @@ import { neededTime, type PlanProof, proofFor, provePlanOnce } from "../proof/pr
 import type { Leg, ShowFlight } from "../show-flight.ts";
 import { legProblems } from "./leg-problems.ts";
 
+const OWN_PLACE = "each drone to its own place";
+
 /** Proofs by key of their problem: a plan that has been proven in this session need not be proven twice. */
 export type ProofCache = Map<string, { readonly plan: Plan; readonly proof: PlanProof }>;
 
@@ -26,12 +28,14 @@ export function checkShow(
 	const problems = legProblems(show, slots, flight.ground, plans);
 	const formations = checkFormations(show, slots);
 	const checks = flight.legs.map((leg, k) => checkLeg(show, leg, problems[k], proofs));
-	const transitions = checks.slice(2, Math.max(2, checks.length - 2));
-	const launch = checks.length >= 4 ? joinChecks("launch", checks[0], checks[1]) : null;
-	const landing = checks.length >= 4 ? joinChecks("landing", checks[checks.length - 2], checks[checks.length - 1]) : null;
+	const transitions = checks.filter(({ id }) => id !== "launch" && id !== "landing");
+	const launch = joinChecks(checks.filter(({ id }) => id === "launch"));
+	const landing = joinChecks(checks.filter(({ id }) => id === "landing"));
 	const { limits } = show.fleet;
 	const endurance = { airborne: flight.ends - flight.begins, limit: limits.endurance * (1 - limits.reserve) };
-	const legsFly = [launch, landing, ...transitions].every((check) => check === null || check.verdicts.includes("flies"));
+	const legsFly = [launch, landing, ...transitions].every(
+		(check) => check === null || check.verdicts.includes("flies"),
+	);
 	const used = usedFormations(flight);
 	const formationsFly = formations.every(({ id, verdicts }) => !used.has(id) || verdicts.includes("flies"));
 	return {
@@ -95,26 +99,32 @@ function gapInShow(proof: Proof, leg: Leg): Proof["gap"] {
 }
 
 function describeAssignment(problem: LegProblem, plan: Plan): string {
-	if (problem.target !== null) return "each drone to its own place";
+	if (problem.target !== null) return OWN_PLACE;
 	const { optimal, cost, bound, cap } = plan.certificate;
 	if (!optimal) return `within ${((cost / Math.max(1, bound) - 1) * 100).toFixed(2)} % of the least sum of squares`;
 	const all = "least sum of squares, dual feasible over all pairs";
 	return cap === null ? all : `${all} with no flight over ${cap.toFixed(2)} of the straight-line bound`;
 }
 
-/** Launch and landing are two legs each, reported as one. */
-function joinChecks(id: string, first: TransitionCheck, second: TransitionCheck): TransitionCheck {
+/** Launch and landing are several legs each, reported as one; null where there are none. */
+function joinChecks(checks: readonly TransitionCheck[]): TransitionCheck | null {
+	return checks.length === 0 ? null : checks.reduce(joinTwo);
+}
+
+function joinTwo(first: TransitionCheck, second: TransitionCheck): TransitionCheck {
 	const most = (name: keyof Proof["peak"]): number => Math.max(first.peak[name], second.peak[name]);
 	const needed = first.needed === null || second.needed === null ? null : first.needed + second.needed;
 	const available = first.available + second.available;
-	const broken = [...first.verdicts, ...second.verdicts].filter((verdict) => verdict !== "flies" && verdict !== "tight");
+	const broken = [...first.verdicts, ...second.verdicts].filter(
+		(verdict) => verdict !== "flies" && verdict !== "tight",
+	);
 	const tight = [...first.verdicts, ...second.verdicts].filter((verdict) => verdict === "tight");
 	const verdicts: Verdict[] = broken.length > 0 ? [...new Set(broken)] : ["flies", ...new Set(tight)];
 	const gaps = [first.gap, second.gap].filter((gap) => gap !== null);
 	gaps.sort((a, b) => a.distance - b.distance);
-	const free = first.certificate.assignment === "each drone to its own place" ? second : first;
+	const free = first.certificate.assignment === OWN_PLACE ? second : first;
 	return {
-		id,
+		id: first.id,
 		from: first.from,
 		to: second.to,
 		departs: first.departs,

@@ -16,6 +16,7 @@ import type { Plan } from "../plan.ts";
 import { PLANNER_VERSION } from "../plan-leg.ts";
 import { smallestWaveGap } from "../proof/waves.ts";
 import { DEFAULT_TAKEOFF, type Stack, stackOver } from "./take-off-stack.ts";
+import { gatherWide, sortInLanes, widerTimes } from "./way-home.ts";
 
 export const GROUND = "take-off grid";
 
@@ -53,8 +54,8 @@ export function timedTransitions(show: Show): TimedTransition[] {
 
 /**
  * What has to be planned for a show: the climb in waves, launch to the opening, every transition, landing. Where each
- * drone stands at the end depends on all transitions, and each must land on its own place, so the way back over the grid
- * is only listed once `plans` holds all others.
+ * drone stands at the end depends on all transitions, and each must land on its own place, so sorting the fleet over the
+ * grid is only listed once `plans` holds all others.
  * @param slots every formation filled up to the fleet
  * @param ground 3·N metres on the take-off grid
  * @param plans by key
@@ -129,22 +130,24 @@ export function legProblems(
 			}),
 		);
 	}
+	const last = timed.length > 0 ? timed[timed.length - 1].to : opening;
+	const landing = { ...launch, id: "landing", fromFormation: last, toFormation: GROUND };
+	const wide = gatherWide(stack.positions, show.fleet.limits, widerTimes(stack.positions, show.fleet.limits, open));
+	// A gathering drawn wide may reach over the flight volume's side: it is above the take-off grid, not in the show.
+	const home = openSpace(open, wide);
+	problems.push(withKey({ ...landing, from: slotsOf(last), to: wide, volume: home }));
 	const rows = plans === undefined ? null : whereDronesEnd(problems, plans, count);
 	if (rows !== null) {
-		const last = timed.length > 0 ? timed[timed.length - 1].to : opening;
-		const target = new Int32Array(count);
-		for (let drone = 0; drone < count; drone++) target[rows[drone]] = drone;
-		problems.push(
-			withKey({
-				...launch,
-				id: "landing",
-				fromFormation: last,
-				toFormation: GROUND,
-				from: slotsOf(last),
-				to: stack.positions,
-				target,
-			}),
-		);
+		const droneAt = new Int32Array(count);
+		for (let drone = 0; drone < count; drone++) droneAt[rows[drone]] = drone;
+		const sorted = sortInLanes(wide, droneAt, show.fleet.limits);
+		const over = { ...landing, fromFormation: GROUND, volume: home };
+		if (sorted !== null) {
+			problems.push(withKey({ ...over, from: wide, to: sorted.risen, target: own }));
+			problems.push(withKey({ ...over, from: sorted.risen, to: sorted.crossed, target: sorted.target }));
+			problems.push(withKey({ ...over, from: sorted.crossed, to: wide, target: own }));
+		}
+		if (wide !== stack.positions) problems.push(withKey({ ...over, from: wide, to: stack.positions, target: own }));
 	}
 	problems.push(vertical("descend", stack.positions, ground));
 	return problems;
@@ -198,7 +201,8 @@ function delaysOf(
 	}
 	const duration = lawDuration(law);
 	const layers = layersOf(stack);
-	const turn = (i: number): number => (kind === "climb" ? stack.waveOf[i] : turnDown(stack.waveOf[i], layers, stack.waves));
+	const turn = (i: number): number =>
+		kind === "climb" ? stack.waveOf[i] : turnDown(stack.waveOf[i], layers, stack.waves);
 	let interval = Math.min(asked, duration);
 	while (true) {
 		const delays = Float64Array.from(stack.waveOf, (_, i) => turn(i) * interval);
