@@ -1,0 +1,90 @@
+import { type Assignment, assign } from "./assign/assign.ts";
+import { straightTime } from "./law/straight-time.ts";
+import type { LegProblem } from "./leg-problem.ts";
+import { scaledMillimetres } from "./measure.ts";
+
+/** An assignment that no drone pays for with a flight much longer than the longest one must be. */
+export interface Candidate {
+	readonly assignment: Assignment;
+	/** Share over the straight-line bound that every flight was held to; null: uncapped, so the √2 guarantee holds. */
+	readonly cap: number | null;
+	/** Seconds: its longest straight flight. */
+	readonly longest: number;
+}
+
+export interface Choice {
+	/** Shortest longest flight first. */
+	readonly candidates: Candidate[];
+	/** Seconds: no assignment has a shorter longest straight flight. */
+	readonly bound: number;
+}
+
+/** Shares over the bound that are tried; sum of squares alone is 1.08 (median) and up to 3.3 (text to text). */
+const CAPS = [1.03, 1.15, 1.35];
+/** The uncapped answer is good enough below this share over the bound. */
+const ENOUGH = 1.02;
+const HALVINGS = 6;
+/** Above this many drones the bound is the larger of the nearest flights alone: bisecting would take too long. */
+const MANY = 2500;
+
+/**
+ * The least sum of squares, and the least sums of squares under caps on the longest flight (forbidden arcs in the same
+ * solver), so that the planner has a choice.
+ */
+export function chooseAssignments(problem: LegProblem): Choice {
+	const { from, to, limits } = problem;
+	const count = from.length / 3;
+	const scaledFrom = scaledMillimetres(from, limits.downwash);
+	const scaledTo = scaledMillimetres(to, limits.downwash);
+	const solved = assign(scaledFrom, scaledTo);
+	if (solved === null) throw new Error("an assignment without forbidden pairs always exists");
+	const time = (i: number, j: number): number =>
+		straightTime(to[3 * j] - from[3 * i], to[3 * j + 1] - from[3 * i + 1], to[3 * j + 2] - from[3 * i + 2], limits);
+	const longestOf = (target: Int32Array): number => {
+		let longest = 0;
+		for (let i = 0; i < count; i++) longest = Math.max(longest, time(i, target[i]));
+		return longest;
+	};
+	const free: Candidate = { assignment: solved, cap: null, longest: longestOf(solved.target) };
+	let low = nearestFlights(count, time, free.longest);
+	if (free.longest <= ENOUGH * low || count < 2) return { candidates: [free], bound: Math.min(low, free.longest) };
+	const within = (limit: number): Assignment | null =>
+		assign(scaledFrom, scaledTo, (i, j) => time(i, j) <= limit + 1e-9, solved);
+	if (count <= MANY) {
+		let high = free.longest;
+		for (let k = 0; k < HALVINGS && high > 1.004 * low; k++) {
+			const middle = Math.sqrt(low * high);
+			const found = within(middle);
+			if (found === null) low = middle;
+			else high = longestOf(found.target);
+		}
+	}
+	const candidates: Candidate[] = [free];
+	if (free.longest > ENOUGH * low) {
+		for (const cap of CAPS) {
+			const limit = cap * low;
+			if (limit >= free.longest) break;
+			const found = within(limit);
+			if (found !== null) candidates.push({ assignment: found, cap, longest: longestOf(found.target) });
+		}
+	}
+	candidates.sort((a, b) => a.longest - b.longest);
+	return { candidates, bound: low };
+}
+
+/** Seconds: some drone must fly at least this long, whoever goes where. */
+function nearestFlights(count: number, time: (i: number, j: number) => number, enough: number): number {
+	const columns = new Float64Array(count).fill(Number.POSITIVE_INFINITY);
+	let bound = 0;
+	for (let i = 0; i < count; i++) {
+		let row = Number.POSITIVE_INFINITY;
+		for (let j = 0; j < count; j++) {
+			const seconds = time(i, j);
+			if (seconds < row) row = seconds;
+			if (seconds < columns[j]) columns[j] = seconds;
+		}
+		bound = Math.max(bound, row);
+	}
+	for (const column of columns) bound = Math.max(bound, column);
+	return Math.min(bound, enough);
+}
