@@ -20,17 +20,32 @@ export interface Segment {
 	/** Frames at FINE_RATE; `to` isn't among them. */
 	readonly from: number;
 	readonly to: number;
-	/** Mean likeness along the line, −1..1; 0 without one. */
-	readonly likeness: number;
+	/**
+	 * Evidence for the line: seconds in which something is heard, each times its likeness over what chance reaches.
+	 * A minute of the same music gives some 30, of other music by chance next to nothing.
+	 */
+	readonly evidence: number;
+	/** Seconds in which something is heard. */
+	readonly heard: number;
 }
+
+/** Likeness that other music of the same kind reaches over a few seconds, found by looking for it. */
+const BY_CHANCE = 0.4;
 
 /** Cost of each line at each new frame: lines × frames; infinite where the line leaves the old soundtrack. */
 export interface LineCosts {
 	readonly frames: number;
 	readonly values: Float32Array;
+	/** One a new frame: 1 where next to nothing is heard. */
+	readonly quiet: Uint8Array;
 }
 
-export function lineCosts(old: FeatureTable, current: FeatureTable, lines: readonly Line[]): LineCosts {
+export function lineCosts(
+	old: FeatureTable,
+	current: FeatureTable,
+	quiet: Uint8Array,
+	lines: readonly Line[],
+): LineCosts {
 	const { frames, dimensions } = current;
 	const values = new Float32Array(lines.length * frames);
 	lines.forEach((line, k) => {
@@ -47,7 +62,7 @@ export function lineCosts(old: FeatureTable, current: FeatureTable, lines: reado
 			values[k * frames + f] = FRAME * (1 - sum);
 		}
 	});
-	return { frames, values };
+	return { frames, values, quiet };
 }
 
 export function findSegments(costs: LineCosts, lines: readonly Line[], anchors: readonly AnchorPair[] = []): Segment[] {
@@ -88,10 +103,14 @@ export function findSegments(costs: LineCosts, lines: readonly Line[], anchors: 
 }
 
 export function segmentOf(costs: LineCosts, line: number, from: number, to: number): Segment {
-	if (line < 0) return { line, from, to, likeness: 0 };
-	let sum = 0;
-	for (let f = from; f < to; f++) sum += 1 - costs.values[line * costs.frames + f] / FRAME;
-	return { line, from, to, likeness: sum / Math.max(1, to - from) };
+	let evidence = 0;
+	let heard = 0;
+	for (let f = from; line >= 0 && f < to; f++) {
+		if (costs.quiet[f] === 1) continue;
+		heard += 1 / FINE_RATE;
+		evidence += (1 - costs.values[line * costs.frames + f] / FRAME - BY_CHANCE) / FINE_RATE;
+	}
+	return { line, from, to, evidence, heard };
 }
 
 /** Which states a set pair allows at this frame, or null where none is set. */

@@ -17,8 +17,17 @@ import { createMonoReader, type MonoReader, sameOffset, sameSoundtrack } from ".
 /** Seconds: stretches shorter than this are chance, and than that even where their samples are the same. */
 const SHORTEST = 1.5;
 const SHORTEST_SAME = 0.7;
-/** Mean likeness at frames of 10 ms below which a stretch is chance. */
-const LEAST_LIKENESS = 0.25;
+/** Seconds in which something must be heard where the samples are the same: silence is the same everywhere. */
+const LEAST_HEARD = 0.3;
+/**
+ * Evidence that a stretch needs to stand alone, and beside others: at rate 1 by phase, or at a rate that another stretch
+ * with much evidence has too (an edit is stretched as a whole). Between pieces of different music the strongest chance
+ * stretch of some twelve hundred had 1.4.
+ */
+const ALONE = 2;
+const BESIDE = 1;
+const MUCH = 6;
+const SAME_RATE = 0.003;
 /** Seconds of other sound on a line that goes on as before: something laid over the music, not an edit. */
 const LAID_OVER = 2;
 /** Seconds, and share of the shorter soundtrack, that must be found again, or it is another piece altogether. */
@@ -142,31 +151,32 @@ interface Believed {
 	readonly segments: readonly Segment[];
 }
 
-/** The path over the lines; lines whose every segment is short or weak are struck off and the path found again. */
+/** The path over the lines; lines whose every segment is weak are struck off and the path found again. */
 function believe(old: Heard, current: Heard, known: readonly KnownLine[], anchors: readonly AnchorPair[]): Believed {
 	let lines = known;
 	for (;;) {
-		const costs = lineCosts(old.fine, current.fine, lines);
+		const costs = lineCosts(old.fine, current.fine, current.quiet, lines);
 		const segments = bridge(costs, findSegments(costs, lines, anchors));
-		const strong = lines.filter((line, k) =>
-			segments.some((segment) => segment.line === k && (isStrong(segment, line) || holdsAnchor(segment, anchors))),
-		);
+		const firm = segments.filter((segment) => segment.line >= 0 && segment.evidence >= MUCH);
+		const rates = firm.map((segment) => lines[segment.line].rate);
+		const holds = (segment: Segment): boolean =>
+			segment.line >= 0 && (isStrong(segment, lines[segment.line], rates) || holdsAnchor(segment, anchors));
+		const strong = lines.filter((_, k) => segments.some((segment) => segment.line === k && holds(segment)));
 		if (strong.length === lines.length) {
 			// A weak segment of a line that is strong elsewhere is chance all the same.
-			const kept = segments.map((segment) =>
-				segment.line < 0 || isStrong(segment, lines[segment.line]) || holdsAnchor(segment, anchors)
-					? segment
-					: { ...segment, line: -1, likeness: 0 },
-			);
+			const kept = segments.map((segment) => (holds(segment) ? segment : { ...segment, line: -1 }));
 			return { lines, costs, segments: bridge(costs, kept) };
 		}
 		lines = strong;
 	}
 }
 
-function isStrong(segment: Segment, line: KnownLine): boolean {
+function isStrong(segment: Segment, line: KnownLine, rates: readonly number[]): boolean {
 	const seconds = (segment.to - segment.from) / FINE_RATE;
-	return segment.likeness >= LEAST_LIKENESS && seconds >= (line.offset === null ? SHORTEST : SHORTEST_SAME);
+	if (line.offset !== null) return seconds >= SHORTEST_SAME && segment.heard >= LEAST_HEARD;
+	const beside =
+		(line.by === "phase" && line.rate === 1) || rates.some((rate) => Math.abs(rate - line.rate) <= SAME_RATE);
+	return seconds >= SHORTEST && segment.evidence >= (beside ? BESIDE : ALONE);
 }
 
 function holdsAnchor(segment: Segment, anchors: readonly AnchorPair[]): boolean {
