@@ -14,7 +14,7 @@ const METRES: readonly { readonly beats: number; readonly cost: number }[] = [
 	{ beats: 7, cost: 0.4 },
 ];
 /** Cost of leaving one metre for another at a bar line. */
-const METRE_CHANGE = 5;
+const METRE_CHANGE = 12;
 
 /** A division of beats into bars. */
 export interface BarDivision {

@@ -10,7 +10,9 @@ const LATE = 0.0035;
 /** Activation below which a peak is no evidence of where a beat lies. */
 const LEAST_PEAK = 0.08;
 /** Share of the track's middle peak that the first and the last beat must reach. */
-const EVIDENCE = 0.5;
+const EVIDENCE = 0.35;
+/** Most beats that count as an echo. */
+const ECHO = 6;
 /** Beats on either side over which confidence is judged. */
 const AROUND = 4;
 
@@ -53,11 +55,18 @@ export function placeBeats(
 	const heights = Float64Array.from(peaks, (peak) => peak?.height ?? 0);
 	const typical = heights.slice().sort()[heights.length >> 1] ?? 0;
 	// The walk goes on for a while where nothing contradicts it: into a last chord's echo, back before a first note.
-	const isBeat = (k: number): boolean => isSounding(walk.beats[k]) && heights[k] > EVIDENCE * typical;
 	let from = 0;
 	let to = walk.beats.length;
-	while (from < to && !isBeat(from)) from++;
-	while (to > from && !isBeat(to - 1)) to--;
+	while (from < to && !isSounding(walk.beats[from])) from++;
+	while (to > from && !isSounding(walk.beats[to - 1])) to--;
+	// A few beats without evidence are an echo; more of them are a faint intro or ending, and counted.
+	const isFaint = (k: number): boolean => heights[k] <= EVIDENCE * typical;
+	let first = from;
+	while (first < to && isFaint(first)) first++;
+	let last = to;
+	while (last > first && isFaint(last - 1)) last--;
+	if (first - from <= ECHO) from = first;
+	if (to - last <= ECHO) to = last;
 	const beats = Float64Array.from({ length: to - from }, (_, k) =>
 		Math.max(0, (peaks[from + k]?.time ?? walk.beats[from + k]) - LATE),
 	);

@@ -10,16 +10,23 @@ import { priorOf } from "./walk-beats.ts";
 const ODDS_LIMIT = 5;
 /** Log-odds from which a beat at a level is worth having: training weighed beats three times (ln 3), and a little. */
 const BEAT_WORTH = 1.5;
+/** Where the music is faint, a beat is worth having from this much below the clearer beats around. */
+const BELOW_CLEAR = 0.3;
+/** Beats on either side that count as around. */
+const AROUND = 12;
 /** Weight of what bars gain beside what beats gain. */
 const BARS_IN_LEVEL = 0.4;
-/** What changing over from one reading to another costs: about as much as ten good beats bring. */
-const CHANGE = 25;
+/** What changing over from one reading to another costs; and where the walk itself has changed its tempo. */
+const CHANGE = 60;
+const CHANGE_AT_TEMPO = 12;
+/** Logarithm of a change of tempo that counts as one. */
+const TEMPO_CHANGE = 0.1;
 /** Seconds between places where a change may come. */
 const STEP = 0.5;
 /** Beats a minute within which people count, and what a beat outside costs. */
 const SLOWEST = 46;
 const FASTEST = 235;
-const OUTSIDE = 4;
+const OUTSIDE = 10;
 /** Seconds within which two readings' beats are the same beat. */
 const SAME = 0.03;
 
@@ -46,21 +53,55 @@ export function highestNear(curve: Float32Array, rate: number, time: number): nu
 }
 
 /** What a reading gains in each step of time. */
-function gainsOf(activation: ActivationCurves, reading: Reading, steps: number): Float64Array {
+function gainsOf(activation: ActivationCurves, reading: Reading, worth: Float64Array): Float64Array {
+	const steps = worth.length;
 	const gains = new Float64Array(steps);
 	const { beats, barGains } = reading;
 	for (let k = 0; k < beats.length; k++) {
 		const interval = k > 0 ? beats[k] - beats[k - 1] : beats[1] - beats[0];
-		let gain = logOdds(highestNear(activation.beat, activation.rate, beats[k])) - BEAT_WORTH;
+		const step = Math.min(steps - 1, Math.floor(beats[k] / STEP));
+		let gain = logOdds(highestNear(activation.beat, activation.rate, beats[k])) - worth[step];
 		gain += priorOf(interval) + BARS_IN_LEVEL * barGains[k];
 		if (interval > 60 / SLOWEST || interval < 60 / FASTEST) gain -= OUTSIDE;
-		gains[Math.min(steps - 1, Math.floor(beats[k] / STEP))] += gain;
+		gains[step] += gain;
 	}
 	return gains;
 }
 
+/** For each step what a beat must reach, from the walk's beats around: the clearer of its two alternations. */
+function weighWorth(activation: ActivationCurves, beats: Float64Array, steps: number): Float64Array {
+	const odds = beats.map((time) => logOdds(highestNear(activation.beat, activation.rate, time)));
+	const worth = new Float64Array(steps);
+	for (let s = 0, k = 0; s < steps; s++) {
+		while (k + 1 < beats.length && beats[k] < s * STEP) k++;
+		const sums = [0, 0];
+		const counts = [0, 0];
+		for (let j = Math.max(0, k - AROUND); j <= Math.min(beats.length - 1, k + AROUND); j++) {
+			sums[j % 2] += odds[j];
+			counts[j % 2]++;
+		}
+		const clear = Math.max(sums[0] / Math.max(1, counts[0]), sums[1] / Math.max(1, counts[1]));
+		worth[s] = Math.min(BEAT_WORTH, clear - BELOW_CLEAR);
+	}
+	return worth;
+}
+
+/** For each step what a change of reading costs there. */
+function weighChanges(beats: Float64Array, steps: number): Float64Array {
+	const costs = new Float64Array(steps).fill(CHANGE);
+	const span = 4;
+	for (let k = span; k + span < beats.length; k++) {
+		const change = Math.log((beats[k + span] - beats[k]) / (beats[k] - beats[k - span]));
+		if (Math.abs(change) < TEMPO_CHANGE) continue;
+		const at = Math.floor(beats[k] / STEP);
+		for (let s = Math.max(0, at - 3); s <= Math.min(steps - 1, at + 3); s++) costs[s] = CHANGE_AT_TEMPO;
+	}
+	return costs;
+}
+
 /** Which reading holds in each step: the most likely way through them. */
-function chooseReadings(gains: readonly Float64Array[], steps: number): Uint8Array {
+function chooseReadings(gains: readonly Float64Array[], costs: Float64Array): Uint8Array {
+	const steps = costs.length;
 	const count = gains.length;
 	const came = new Uint8Array(steps * count);
 	let best = new Float64Array(count);
@@ -69,9 +110,9 @@ function chooseReadings(gains: readonly Float64Array[], steps: number): Uint8Arr
 		let top = 0;
 		for (let r = 1; r < count; r++) if (best[r] > best[top]) top = r;
 		for (let r = 0; r < count; r++) {
-			const changed = best[top] - CHANGE > best[r];
+			const changed = best[top] - costs[s] > best[r];
 			came[s * count + r] = changed ? top : r;
-			next[r] = (changed ? best[top] - CHANGE : best[r]) + gains[r][s];
+			next[r] = (changed ? best[top] - costs[s] : best[r]) + gains[r][s];
 		}
 		[best, next] = [next, best];
 	}
@@ -106,9 +147,10 @@ function commonBeat(a: Float64Array, b: Float64Array, wanted: number): number {
  */
 export function chooseBeats(activation: ActivationCurves, readings: readonly Reading[]): Float64Array {
 	const steps = Math.max(1, Math.ceil(activation.beat.length / activation.rate / STEP));
+	const worth = weighWorth(activation, readings[0].beats, steps);
 	const chosen = chooseReadings(
-		readings.map((reading) => gainsOf(activation, reading, steps)),
-		steps,
+		readings.map((reading) => gainsOf(activation, reading, worth)),
+		weighChanges(readings[0].beats, steps),
 	);
 	const beats: number[] = [];
 	let from = Number.NEGATIVE_INFINITY;

@@ -29,15 +29,17 @@ const JITTER = 0.7;
 /** Log-odds are held within this. */
 const ODDS_LIMIT = 6.4;
 /** Added to a beat's log-odds: less than the fifteenth of frames that lie near a beat asks for, as training already weighed beats. */
-const BEAT_ODDS = 1.7;
+const BEAT_ODDS = 2;
 /** Most people tap near here (Moelants 2002, McKinney and Moelants 2006); broad, or it loses whole collections. */
 const PRIOR_CENTRE = 118;
 const PRIOR_OCTAVES = 0.8;
-const PRIOR_WEIGHT = 0.3;
+const PRIOR_WEIGHT = 0.45;
 /** Frames kept of the past: more than the longest beat, and no power of two, whose strides share few cache lines. */
 const RING = 125;
 /** What a walk begins with: a little less than nothing, so that it doesn't begin anew without reason. */
 const START_COST = -2;
+/** What a second of music before the first beat or after the last costs: people go on counting through a faint bar. */
+const UNCOVERED = 4;
 /** Share by which a guided walk may leave its guide's interval. */
 const GUIDE_WIDTH = 0.15;
 
@@ -49,7 +51,7 @@ const JUMP = 255;
 /** Beats in seconds, not yet moved onto the sound's own onsets. */
 export interface BeatWalk {
 	readonly beats: Float64Array;
-	/** Log-likelihood ratio against a soundtrack without beats. */
+	/** Log-likelihood ratio against a soundtrack without beats, less what is left uncovered. */
 	readonly score: number;
 }
 
@@ -176,6 +178,8 @@ export function walkBeats(
 		jumps[t] = arrivesBy[peak] * 256 + peak;
 		const low = band ? band.low[t] : 0;
 		const high = band ? band.high[t] : n - 1;
+		const begin = START_COST - (UNCOVERED * t) / RATE;
+		const rest = (UNCOVERED * (frames - t)) / RATE;
 		for (let i = 0; i < n; i++) {
 			let value = reached[i];
 			const away = origin[i] - i + REACH;
@@ -185,8 +189,8 @@ export function walkBeats(
 			} else {
 				how = arrivesBy[origin[i]] * (2 * REACH + 1) + away;
 			}
-			if (!(value > START_COST)) {
-				value = START_COST;
+			if (!(value > begin)) {
+				value = begin;
 				how = START;
 			}
 			value = i < low || i > high ? Number.NEGATIVE_INFINITY : value + score[t] + prior[i];
@@ -194,15 +198,15 @@ export function walkBeats(
 			best[at] = value;
 			best[at + RING] = value;
 			came[t * n + i] = how;
-			if (value > top) {
-				top = value;
+			if (value - rest > top) {
+				top = value - rest;
 				topAt = t;
 				topInterval = i;
 			}
 		}
 	}
 	const beats: number[] = [];
-	for (let t = topAt, i = topInterval; top > 0; ) {
+	for (let t = topAt, i = topInterval; frames > 0; ) {
 		beats.push(t / RATE);
 		const how = came[t * n + i];
 		if (how === START) break;
@@ -210,5 +214,5 @@ export function walkBeats(
 		i = how === JUMP ? jumps[t] & 255 : i + (how % (2 * REACH + 1)) - REACH;
 		t -= shortest[i] + way;
 	}
-	return { beats: Float64Array.from(beats.reverse()), score: Math.max(0, top) };
+	return { beats: Float64Array.from(beats.reverse()), score: top };
 }
