@@ -82,6 +82,8 @@ def main():
     ap.add_argument('--steps', type=int, default=3700)
     ap.add_argument('--minutes', type=float, help='end the schedule after this time if the steps are not done by then')
     ap.add_argument('--seed', type=int, default=1)
+    ap.add_argument('--start', help='weights to go on from')
+    ap.add_argument('--peak', type=float, default=PEAK_RATE, help='highest learning rate')
     ap.add_argument('--threads', type=int, default=1)
     args = ap.parse_args()
     torch.set_num_threads(args.threads)
@@ -94,6 +96,8 @@ def main():
     held = [item for path in sorted(glob.glob(f'{args.validation}/*-*.npz')) for item in load(path)] if args.validation else []
     check = [crop(np.random.default_rng(i), item) for i, item in enumerate(held)]
     net, mean = Network(), Network()
+    if args.start:
+        net.load_state_dict(torch.load(args.start))
     mean.load_state_dict(net.state_dict())
     adam = torch.optim.Adam(net.parameters(), lr=PEAK_RATE)
     print(sum(p.numel() for p in net.parameters()), 'parameters', flush=True)
@@ -127,7 +131,7 @@ def main():
             batch.append(crop(rng, pool[rng.integers(len(pool))]))
         x, target, weight = (torch.from_numpy(np.stack(part)) for part in zip(*batch))
         for group in adam.param_groups:
-            group['lr'] = PEAK_RATE * min(1.0, (step + 1) / WARM_UP) * (0.01 + 0.99 * 0.5 * (1 + np.cos(np.pi * progress)))
+            group['lr'] = args.peak * min(1.0, (step + 1) / WARM_UP) * (0.01 + 0.99 * 0.5 * (1 + np.cos(np.pi * progress)))
         net.train()
         loss = loss_of(net(x), target, weight)
         adam.zero_grad()
