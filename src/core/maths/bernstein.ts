@@ -9,7 +9,8 @@ export function binomials(most: number): Float64Array {
 	const table = new Float64Array(width * width);
 	for (let n = 0; n <= most; n++) {
 		table[n * width] = 1;
-		for (let k = 1; k <= n; k++) table[n * width + k] = table[(n - 1) * width + k - 1] + (k < n ? table[(n - 1) * width + k] : 0);
+		for (let k = 1; k <= n; k++)
+			table[n * width + k] = table[(n - 1) * width + k - 1] + (k < n ? table[(n - 1) * width + k] : 0);
 	}
 	return table;
 }
