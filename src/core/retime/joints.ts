@@ -8,7 +8,7 @@ import type { Joint } from "./edit-map.ts";
 import type { SureLine } from "./find-lines.ts";
 import { newOn, oldOn } from "./line.ts";
 import type { LineCosts, Segment } from "./line-path.ts";
-import { FINE_RATE } from "./listen.ts";
+import { FINE_RATE, QUIET } from "./listen.ts";
 import { type MonoReader, sameUntil } from "./same-samples.ts";
 
 /** A line and, where the samples are the same along it, by how many samples old runs ahead of new. */
@@ -22,9 +22,9 @@ export interface JointEvidence {
 	readonly costs: LineCosts;
 	readonly old: MonoReader;
 	readonly current: MonoReader;
-	/** One a fine frame: 1 where next to nothing is heard. */
-	readonly quietOld: Uint8Array;
-	readonly quietNew: Uint8Array;
+	/** One a fine frame, as `Heard` has them. */
+	readonly oldLevels: Float32Array;
+	readonly newLevels: Float32Array;
 	/** Hz of both where an offset is known. */
 	readonly sampleRate: number;
 	/** Old seconds, rising; may be empty. */
@@ -34,9 +34,11 @@ export interface JointEvidence {
 
 /** Seconds from the rough joint at which the samples are looked at first, and how far further in. */
 const INSIDE = 0.15;
-const FURTHEST_INSIDE = 1.2;
+const FURTHEST_INSIDE = 1.8;
 /** Seconds: a cross-fade between two same stretches longer than this is not taken for one. */
-const LONGEST_FADE = 0.4;
+const LONGEST_FADE = 2.5;
+/** Seconds by which samples may stop being the same before the rough joint with new music. */
+const EARLIER = 0.4;
 /** Seconds a fade may hide of a joint with new music. */
 const HIDDEN = 0.02;
 /** Seconds over which an ambiguous joint is followed. */
@@ -68,10 +70,10 @@ export function placeJoint(evidence: JointEvidence, before: Segment, after: Segm
 		}
 	}
 	// Samples that go on being the same past the rough joint are believed however far; other sound isn't by chance.
-	if (end !== null && start === null && end > rough - LONGEST_FADE) {
+	if (end !== null && start === null && end > rough - EARLIER) {
 		return { at: onBeat(evidence, left, null, end, end + HIDDEN, end) ?? end, spread: HIDDEN, ambiguous: null };
 	}
-	if (start !== null && end === null && start < rough + LONGEST_FADE) {
+	if (start !== null && end === null && start < rough + EARLIER) {
 		return {
 			at: onBeat(evidence, null, right, start - HIDDEN, start, start) ?? start,
 			spread: HIDDEN,
@@ -86,14 +88,14 @@ export function placeJoint(evidence: JointEvidence, before: Segment, after: Segm
 
 /** A pause beside new music belongs to the stretch as long as it is a pause in both soundtracks. */
 function throughQuiet(evidence: JointEvidence, line: KnownLine, joint: Joint, step: 1 | -1): Joint {
-	const { quietOld, quietNew } = evidence;
+	const { oldLevels, newLevels } = evidence;
 	let frame = Math.round(joint.at * FINE_RATE);
 	const first = frame;
 	for (;;) {
 		const next = frame + step;
 		const old = Math.round(oldOn(line, next / FINE_RATE) * FINE_RATE);
-		if (next < 0 || next >= quietNew.length || old < 0 || old >= quietOld.length) break;
-		if (quietNew[next] === 0 || quietOld[old] === 0) break;
+		if (next < 0 || next >= newLevels.length || old < 0 || old >= oldLevels.length) break;
+		if (newLevels[next] >= QUIET || oldLevels[old] >= QUIET) break;
 		frame = next;
 	}
 	return frame === first ? joint : { ...joint, at: frame / FINE_RATE };

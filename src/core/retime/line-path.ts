@@ -5,7 +5,7 @@
 import { NOT_IN_OLD } from "./coarse-path.ts";
 import type { AnchorPair } from "./edit-map.ts";
 import { type Line, oldOn } from "./line.ts";
-import { type FeatureTable, FINE_RATE } from "./listen.ts";
+import { type FeatureTable, FINE_RATE, QUIET } from "./listen.ts";
 
 /** Costs in units of one wholly unlike tenth of a second, as on the coarse path. */
 const FRAME = 10 / FINE_RATE;
@@ -36,14 +36,14 @@ const BY_CHANCE = 0.4;
 export interface LineCosts {
 	readonly frames: number;
 	readonly values: Float32Array;
-	/** One a new frame: 1 where next to nothing is heard. */
-	readonly quiet: Uint8Array;
+	/** One a new frame, as `Heard` has them. */
+	readonly levels: Float32Array;
 }
 
 export function lineCosts(
 	old: FeatureTable,
 	current: FeatureTable,
-	quiet: Uint8Array,
+	levels: Float32Array,
 	lines: readonly Line[],
 ): LineCosts {
 	const { frames, dimensions } = current;
@@ -62,7 +62,7 @@ export function lineCosts(
 			values[k * frames + f] = FRAME * (1 - sum);
 		}
 	});
-	return { frames, values, quiet };
+	return { frames, values, levels };
 }
 
 export function findSegments(costs: LineCosts, lines: readonly Line[], anchors: readonly AnchorPair[] = []): Segment[] {
@@ -106,7 +106,7 @@ export function segmentOf(costs: LineCosts, line: number, from: number, to: numb
 	let evidence = 0;
 	let heard = 0;
 	for (let f = from; line >= 0 && f < to; f++) {
-		if (costs.quiet[f] === 1) continue;
+		if (costs.levels[f] < QUIET) continue;
 		heard += 1 / FINE_RATE;
 		evidence += (1 - costs.values[line * costs.frames + f] / FRAME - BY_CHANCE) / FINE_RATE;
 	}

@@ -27,8 +27,10 @@ const PITCH_CLASSES = 12;
 const NORMALISED_OVER = 3;
 /** Share of the track's loudest level (its 95th percentile) under which nothing is heard: −60 dB. */
 const SILENT_SHARE = 0.001;
-/** Log level of a frame's loudest band under which it is quiet: three times the silent level. */
-const QUIET = 0.6;
+/** Log level of a frame's loudest band under which it is quiet: some 50 dB under the loud parts. */
+export const QUIET = 0.6;
+/** And soft, like the end of a fade: 20 dB under. */
+export const SOFT = 2;
 /** Spread of a band, in the units of its logarithm, below which it is not blown up: noise would be heard as music. */
 const LEAST_SPREAD = 0.12;
 /** How alike two silent frames are: a little more than "not in the old one" costs, so that a pause doesn't break a stretch. */
@@ -53,8 +55,8 @@ export interface Heard {
 	readonly work: Float32Array;
 	readonly fine: FeatureTable;
 	readonly coarse: FeatureTable;
-	/** One a fine frame: 1 where next to nothing is heard (some 50 dB under the loud parts). */
-	readonly quiet: Uint8Array;
+	/** One a fine frame: log10 of the loudest band's level over the silent one. See QUIET and SOFT. */
+	readonly levels: Float32Array;
 	/** True where there is nothing to hear at all. */
 	readonly silent: boolean;
 }
@@ -71,7 +73,7 @@ export function listen(samples: Samples, onProgress?: (share: number) => void): 
 	const fine = fineTable(mel.values, frames);
 	const coarse = coarseTable(mel.values, frames, chroma(work, duration));
 	onProgress?.(1);
-	return { samples, duration, work, fine, coarse, quiet: quietFrames(mel.values, frames), silent: mel.silent };
+	return { samples, duration, work, fine, coarse, levels: loudestBands(mel.values, frames), silent: mel.silent };
 }
 
 /** Log-mel levels, frames × BANDS; 0 is the silent level. */
@@ -98,14 +100,12 @@ function logMel(work: Float32Array, frames: number): { values: Float32Array; sil
 	return { values, silent: loud < 1e-6 };
 }
 
-function quietFrames(mel: Float32Array, frames: number): Uint8Array {
-	const quiet = new Uint8Array(frames);
+function loudestBands(mel: Float32Array, frames: number): Float32Array {
+	const levels = new Float32Array(frames);
 	for (let f = 0; f < frames; f++) {
-		let loudest = 0;
-		for (let b = 0; b < BANDS; b++) loudest = Math.max(loudest, mel[f * BANDS + b]);
-		quiet[f] = loudest < QUIET ? 1 : 0;
+		for (let b = 0; b < BANDS; b++) levels[f] = Math.max(levels[f], mel[f * BANDS + b]);
 	}
-	return quiet;
+	return levels;
 }
 
 /** Twelve pitch classes at COARSE_RATE, from frames of 186 ms. */

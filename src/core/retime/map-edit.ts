@@ -11,8 +11,8 @@ import { findLines, type SureLine } from "./find-lines.ts";
 import { type JointEvidence, type KnownLine, placeJoint } from "./joints.ts";
 import { oldOn } from "./line.ts";
 import { findSegments, type LineCosts, lineCosts, type Segment, segmentOf } from "./line-path.ts";
-import { FINE_RATE, type Heard, listen } from "./listen.ts";
-import { createMonoReader, type MonoReader, sameOffset, sameSoundtrack } from "./same-samples.ts";
+import { FINE_RATE, type Heard, listen, SOFT } from "./listen.ts";
+import { createMonoReader, type MonoReader, sameOffset, sameShare, sameSoundtrack } from "./same-samples.ts";
 
 /** Seconds: stretches shorter than this are chance, and than that even where their samples are the same. */
 const SHORTEST = 1.5;
@@ -80,8 +80,8 @@ export function mapEdit(old: Samples, current: Samples, options: MapOptions = {}
 		lines: believed.lines,
 		costs: believed.costs,
 		...readers,
-		quietOld: heardOld.quiet,
-		quietNew: heard.quiet,
+		oldLevels: heardOld.levels,
+		newLevels: heard.levels,
 		sampleRate: current.sampleRate,
 		beats: options.beats ?? [],
 		downbeats: options.downbeats ?? [],
@@ -155,8 +155,8 @@ interface Believed {
 function believe(old: Heard, current: Heard, known: readonly KnownLine[], anchors: readonly AnchorPair[]): Believed {
 	let lines = known;
 	for (;;) {
-		const costs = lineCosts(old.fine, current.fine, current.quiet, lines);
-		const segments = bridge(costs, findSegments(costs, lines, anchors));
+		const costs = lineCosts(old.fine, current.fine, current.levels, lines);
+		const segments = toEnds(costs, bridge(costs, findSegments(costs, lines, anchors)));
 		const firm = segments.filter((segment) => segment.line >= 0 && segment.evidence >= MUCH);
 		const rates = firm.map((segment) => lines[segment.line].rate);
 		const holds = (segment: Segment): boolean =>
@@ -165,7 +165,7 @@ function believe(old: Heard, current: Heard, known: readonly KnownLine[], anchor
 		if (strong.length === lines.length) {
 			// A weak segment of a line that is strong elsewhere is chance all the same.
 			const kept = segments.map((segment) => (holds(segment) ? segment : { ...segment, line: -1 }));
-			return { lines, costs, segments: bridge(costs, kept) };
+			return { lines, costs, segments: toEnds(costs, bridge(costs, kept)) };
 		}
 		lines = strong;
 	}
@@ -206,6 +206,29 @@ function bridge(costs: LineCosts, segments: readonly Segment[]): Segment[] {
 	return joined;
 }
 
+/** A short soft start or end (a fade, a reverberation cut off) belongs to the stretch beside it, if its line reaches there. */
+function toEnds(costs: LineCosts, segments: readonly Segment[]): Segment[] {
+	const out = [...segments];
+	const belongs = (segment: Segment | undefined, line: number | undefined): boolean => {
+		if (segment?.line !== -1 || line === undefined || line < 0) return false;
+		if ((segment.to - segment.from) / FINE_RATE > LAID_OVER) return false;
+		let level = 0;
+		for (let f = segment.from; f < segment.to; f++) {
+			if (!Number.isFinite(costs.values[line * costs.frames + f])) return false;
+			level += costs.levels[f] / (segment.to - segment.from);
+		}
+		return level < SOFT;
+	};
+	const [first, second] = out;
+	if (belongs(first, second?.line)) out.splice(0, 2, segmentOf(costs, second.line, first.from, second.to));
+	const last = out[out.length - 1];
+	const beforeLast = out[out.length - 2];
+	if (belongs(last, beforeLast?.line)) {
+		out.splice(out.length - 2, 2, segmentOf(costs, beforeLast.line, beforeLast.from, last.to));
+	}
+	return out;
+}
+
 function toPieces(
 	evidence: JointEvidence,
 	segments: readonly Segment[],
@@ -227,7 +250,15 @@ function toPieces(
 			(durations.oldDuration - line.at) / line.rate,
 		);
 		if (!(last > first)) return;
-		const exact = line.offset !== null;
+		const exact =
+			line.offset !== null &&
+			sameShare(
+				evidence.old,
+				evidence.current,
+				line.offset,
+				Math.round(first * evidence.sampleRate),
+				Math.round(last * evidence.sampleRate),
+			) > 0.5;
 		const { confidence } = likelihoodOf(old.coarse, current.coarse, line, first, last, exact);
 		pieces.push({ newFrom: first, newTo: last, line: { at: line.at, rate: line.rate }, confidence, exact });
 	});

@@ -7,7 +7,7 @@ import { audible } from "./small-copy.ts";
 /** Samples may differ by the rounding of a 16-bit file and its dither. */
 const SAME = 2.5 / 32768;
 const PROBE = 2048;
-const PROBES = 9;
+const PROBES = 16;
 /** Samples to either side of the measured offset that are tried. */
 const NEAR = 3;
 /** So many unlike samples in a row end a stretch: one alone may be a click that was taken out. */
@@ -36,7 +36,8 @@ export function createMonoReader(samples: Samples): MonoReader {
 
 /**
  * The whole number of samples by which old runs ahead of new along a line of rate 1 where the samples are the same, or
- * null where they aren't.
+ * null where they aren't. Two probes of many suffice: thousands of samples aren't the same by chance, and the line may
+ * hold only here and there.
  * @param from new samples, likewise `to`
  */
 export function sameOffset(
@@ -49,27 +50,47 @@ export function sameOffset(
 ): number | null {
 	if (line.rate !== 1) return null;
 	const near = Math.round(oldOn(line, 0) * sampleRate);
-	const votes = new Map<number, number>();
-	let heard = 0;
-	for (let p = 0; p < PROBES; p++) {
-		const start = Math.round(from + ((to - from - PROBE) * (p + 0.5)) / PROBES);
-		let energy = 0;
-		for (let i = 0; i < PROBE; i++) energy += current.at(start + i) ** 2;
-		if (energy < PROBE * SAME * SAME * 100) continue;
-		heard++;
-		for (let d = -NEAR; d <= NEAR; d++) {
-			let unlike = 0;
-			for (let i = 0; i < PROBE && unlike < PROBE / 50; i++) {
-				if (Math.abs(current.at(start + i) - old.at(start + i + near + d)) > SAME) unlike++;
-			}
-			if (unlike < PROBE / 50) votes.set(near + d, (votes.get(near + d) ?? 0) + 1);
+	let best: number | null = null;
+	let most = 0;
+	for (let d = -NEAR; d <= NEAR; d++) {
+		const { same } = probe(old, current, near + d, from, to);
+		if (same > most) {
+			most = same;
+			best = near + d;
 		}
 	}
-	let best: number | null = null;
-	for (const [offset, count] of votes) {
-		if (count >= Math.max(1, 0.6 * heard) && (best === null || count > (votes.get(best) ?? 0))) best = offset;
+	return most >= 2 ? best : null;
+}
+
+/** Share of the places between two new samples at which something is heard and the samples are the same. */
+export function sameShare(old: MonoReader, current: MonoReader, offset: number, from: number, to: number): number {
+	const { same, heard } = probe(old, current, offset, from, to);
+	return heard === 0 ? 0 : same / heard;
+}
+
+function probe(
+	old: MonoReader,
+	current: MonoReader,
+	offset: number,
+	from: number,
+	to: number,
+): { same: number; heard: number } {
+	let same = 0;
+	let heard = 0;
+	for (let p = 0; p < PROBES; p++) {
+		const start = Math.round(from + (Math.max(0, to - from - PROBE) * (p + 0.5)) / PROBES);
+		let energy = 0;
+		let unlike = 0;
+		for (let i = start; i < start + PROBE; i++) {
+			const value = current.at(i);
+			energy += value * value;
+			if (Math.abs(value - old.at(i + offset)) > SAME) unlike++;
+		}
+		if (energy < PROBE * SAME * SAME * 100) continue;
+		heard++;
+		if (unlike < PROBE / 50) same++;
 	}
-	return best;
+	return { same, heard };
 }
 
 /**
