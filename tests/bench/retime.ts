@@ -58,6 +58,8 @@ interface Figures {
 	readonly edgesRight: number;
 	readonly seconds: number;
 	readonly cpu: number;
+	/** CPU seconds of a hundred million multiply-adds in the same process just before and after: machines are shared. */
+	readonly reference: number;
 	readonly megabytes: number;
 	readonly minutes: number;
 	readonly baselineRight: number;
@@ -124,6 +126,17 @@ const soundtrackOf = (file: string, samples: Samples): Soundtrack => ({
 	channels: samples.channels.length,
 });
 
+function referenceSeconds(): number {
+	const values = new Float64Array(8192).fill(1.1);
+	const started = process.cpuUsage();
+	let sum = 0;
+	for (let round = 0; round < 12_207; round++) {
+		for (let i = 0; i < 8192; i++) sum += values[i] * values[(i + round) & 8191];
+	}
+	const { user, system } = process.cpuUsage(started);
+	return sum > 0 ? (user + system) / 1e6 : 0;
+}
+
 async function measureOne(json: string): Promise<Figures> {
 	const truth: Truth = JSON.parse(readFileSync(json, "utf8"));
 	const { beats, downbeats }: { beats: number[]; downbeats: number[] } = JSON.parse(
@@ -132,12 +145,14 @@ async function measureOne(json: string): Promise<Figures> {
 	const audio = [json.replace(/json$/, "wav"), json.replace(/json$/, "mp3")].find((file) => existsSync(file)) as string;
 	const old = await readAudio(truth.original);
 	const current = await readAudio(audio);
+	const referenceBefore = referenceSeconds();
 	const started = performance.now();
 	const cpuStarted = process.cpuUsage();
 	const map = mapEdit(old, current, { beats, downbeats });
 	const result = retimeShow(showOnBeats(beats, downbeats, old), map, soundtrackOf("new.wav", current));
 	const cpu = process.cpuUsage(cpuStarted);
 	const seconds = (performance.now() - started) / 1000;
+	const reference = (referenceBefore + referenceSeconds()) / 2;
 	const megabytes = process.resourceUsage().maxRSS / 1024;
 	const tolerance = TOLERANCE[truth.kind] ?? 0.015;
 	const tally = { surviving: 0, right: 0, worst: 0, orphansRight: 0, orphansSaid: 0, orphansTrue: 0, reviewAway: 0 };
@@ -188,6 +203,7 @@ async function measureOne(json: string): Promise<Figures> {
 		edgesRight,
 		seconds,
 		cpu: (cpu.user + cpu.system) / 1e6,
+		reference,
 		megabytes,
 		minutes: duration / 60,
 	};
@@ -214,7 +230,19 @@ const middle = (values: readonly number[]): number =>
 	[...values].sort((a, b) => a - b)[Math.floor(values.length / 2)] ?? 0;
 
 function printTable(rows: readonly Figures[]): void {
-	const head = ["kind", "pairs", "right", "worst ms", "orphan P", "orphan R", "edges", "review away", "s/4 min", "MB"];
+	const head = [
+		"kind",
+		"pairs",
+		"right",
+		"worst ms",
+		"orphan P",
+		"orphan R",
+		"edges",
+		"review away",
+		"s/4 min",
+		"× ref",
+		"MB",
+	];
 	const lines = [[...head, "| baseline", "orphan R"]];
 	for (const kind of [...Object.keys(TOLERANCE).filter((one) => rows.some((row) => row.kind === one)), "all"]) {
 		const of = kind === "all" ? rows : rows.filter((row) => row.kind === kind);
@@ -244,6 +272,7 @@ function printTable(rows: readonly Figures[]): void {
 				sum(of, (row) => row.cues),
 			),
 			middle(of.map((row) => (row.cpu * 4) / row.minutes)).toFixed(2),
+			middle(of.map((row) => (row.cpu * 4) / row.minutes / row.reference)).toFixed(1),
 			Math.max(...of.map((row) => row.megabytes)).toFixed(0),
 			`| ${share(
 				sum(of, (row) => row.baselineRight),

@@ -2,7 +2,7 @@
 import { type Line, oldOn } from "./line.ts";
 import type { FeatureTable } from "./listen.ts";
 
-const PROBES = 60;
+const PROBES = 32;
 /** Seconds around the stretch's own line that don't count as another place. */
 const OWN = 0.4;
 /** Likeness from which on a stretch is as good as certain to be this music, and lead over the next best for full trust. */

@@ -64,32 +64,34 @@ function halve(channels: readonly Float32Array[]): Float32Array {
 	for (let p = 0; p < PAIRS; p++) weights[p] /= total;
 	const centre = 0.5 / total;
 	const [w0, w1, w2, w3, w4, w5, w6, w7] = weights;
-	const reach = 2 * PAIRS;
 	const block = 8192;
-	// One block of the mean with its surroundings at a time: half an hour of stereo needs no mixed copy.
-	const x = new Float64Array(2 * block + 2 * reach);
 	const share = 1 / channels.length;
+	// One block of the mean at a time, even and odd samples apart, so that reads run straight through memory: odd[i] is
+	// sample 2 · (i − PAIRS) + 1 of the block. Half an hour of stereo needs no mixed copy.
+	const even = new Float64Array(block);
+	const odd = new Float64Array(block + 2 * PAIRS);
 	for (let first = 0; first < out.length; first += block) {
-		const base = 2 * first - reach;
-		x.fill(0);
+		const count = Math.min(block, out.length - first);
+		even.fill(0);
+		odd.fill(0);
 		for (const channel of channels) {
-			const from = Math.max(0, -base);
-			const to = Math.min(x.length, length - base);
-			for (let i = from; i < to; i++) x[i] += channel[base + i] * share;
+			for (let i = 0; i < count; i++) even[i] += channel[2 * (first + i)] * share;
+			const base = 2 * (first - PAIRS) + 1;
+			const from = Math.max(0, Math.ceil(-base / 2));
+			const to = Math.min(odd.length, Math.ceil((length - base) / 2));
+			for (let i = from; i < to; i++) odd[i] += channel[base + 2 * i] * share;
 		}
-		const last = Math.min(out.length, first + block);
-		for (let i = first; i < last; i++) {
-			const at = 2 * (i - first) + reach;
-			out[i] =
-				centre * x[at] +
-				w0 * (x[at - 1] + x[at + 1]) +
-				w1 * (x[at - 3] + x[at + 3]) +
-				w2 * (x[at - 5] + x[at + 5]) +
-				w3 * (x[at - 7] + x[at + 7]) +
-				w4 * (x[at - 9] + x[at + 9]) +
-				w5 * (x[at - 11] + x[at + 11]) +
-				w6 * (x[at - 13] + x[at + 13]) +
-				w7 * (x[at - 15] + x[at + 15]);
+		for (let i = 0; i < count; i++) {
+			out[first + i] =
+				centre * even[i] +
+				w0 * (odd[i + 7] + odd[i + 8]) +
+				w1 * (odd[i + 6] + odd[i + 9]) +
+				w2 * (odd[i + 5] + odd[i + 10]) +
+				w3 * (odd[i + 4] + odd[i + 11]) +
+				w4 * (odd[i + 3] + odd[i + 12]) +
+				w5 * (odd[i + 2] + odd[i + 13]) +
+				w6 * (odd[i + 1] + odd[i + 14]) +
+				w7 * (odd[i] + odd[i + 15]);
 		}
 	}
 	return out;
