@@ -43,6 +43,8 @@ const xOf = (picture: RowPicture, position: number) => (position - picture.row.f
 function drawGrid(pen: CanvasRenderingContext2D, picture: RowPicture): void {
 	const { row, lanes, beatMap, inks, pixelsPerBeat } = picture;
 	const first = Math.ceil(row.from - 1e-6);
+	pen.font = `15px ${inks.sans}`;
+	const nameEnd = row.name === "" ? 0 : pen.measureText(row.name).width + 14;
 	pen.lineWidth = 1;
 	for (let beat = first; beat <= row.to + 1e-6; beat++) {
 		const x = Math.round(xOf(picture, beat)) + 0.5;
@@ -59,9 +61,12 @@ function drawGrid(pen: CanvasRenderingContext2D, picture: RowPicture): void {
 			pen.lineTo(x, lanes.ticks + (picture.unsure.has(beat) ? 2 : 3));
 		}
 		pen.stroke();
+		// The section's name stands at the head of the line; a bar number must not run into it.
+		const clear = x > nameEnd;
 		const everyBar = pixelsPerBeat * beatMap.beatsPerBarAt(beat) > 64;
 		if (
 			isBar &&
+			clear &&
 			everyBar &&
 			beat < row.to - 0.5 &&
 			(place.bar - row.bar) % (pixelsPerBeat > 30 ? 1 : 4) === 0 &&

@@ -78,9 +78,9 @@ export function StavesPane() {
 			staves.current?.setPlayhead(seconds);
 			const position = beatMap.positionAt(seconds);
 			followStrip(position);
-			if (studio.store.getState().playback.playing) staves.current?.reveal(position);
+			staves.current?.reveal(position);
 		},
-		[beatMap, studio],
+		[beatMap],
 	);
 	useFrame(follow);
 	return <section ref={host} className="staves" aria-label="Staves: the music with its cues" />;

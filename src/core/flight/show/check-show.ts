@@ -7,6 +7,7 @@ import type { Plan, Proof, Verdict } from "../plan.ts";
 import { neededTime, type PlanProof, proofFor, provePlanOnce } from "../proof/prove-plan.ts";
 import type { Leg, ShowFlight } from "../show-flight.ts";
 import { legProblems } from "./leg-problems.ts";
+import { findRemedies } from "./remedies.ts";
 
 const OWN_PLACE = "each drone to its own place";
 
@@ -28,7 +29,9 @@ export function checkShow(
 	const problems = legProblems(show, slots, flight.ground, plans);
 	const formations = checkFormations(show, slots);
 	const checks = flight.legs.map((leg, k) => checkLeg(show, leg, problems[k], proofs));
-	const transitions = checks.filter(({ id }) => id !== "launch" && id !== "landing");
+	const flown = checks.filter(({ id }) => id !== "launch" && id !== "landing");
+	const remedies = findRemedies(show, flown, new Map(problems.map((problem) => [problem.id, problem])));
+	const transitions = flown.map((check) => ({ ...check, remedies: remedies.get(check.id) ?? [] }));
 	const launch = joinChecks(checks.filter(({ id }) => id === "launch"));
 	const landing = joinChecks(checks.filter(({ id }) => id === "landing"));
 	const { limits } = show.fleet;
