@@ -39,6 +39,8 @@ const FURTHEST_INSIDE = 1.8;
 const LONGEST_FADE = 2.5;
 /** Seconds by which samples may stop being the same before the rough joint with new music. */
 const EARLIER = 0.4;
+/** Seconds by which quiet samples may shift the middle of a fade from the joint. */
+const OFF_MIDDLE = 0.0015;
 /** Seconds a fade may hide of a joint with new music. */
 const HIDDEN = 0.02;
 /** Seconds over which an ambiguous joint is followed. */
@@ -65,7 +67,9 @@ export function placeJoint(evidence: JointEvidence, before: Segment, after: Segm
 		}
 		if (start - end <= LONGEST_FADE) {
 			// A fade between them: its middle is the joint, to the sample.
-			const at = Math.round(((start + end) / 2) * sampleRate) / sampleRate;
+			const middle = (start + end) / 2;
+			const beat = onBeat(evidence, null, right, middle - OFF_MIDDLE, middle + OFF_MIDDLE, middle) ?? middle;
+			const at = Math.round(beat * sampleRate) / sampleRate;
 			return { at, spread: (start - end) / 2, ambiguous: null };
 		}
 	}

@@ -13,6 +13,8 @@ const CHANGE = 3;
 const ENTER_NEW = 0.5;
 /** Seconds that a line may stray from a pair that the designer set and still honour it. */
 const ANCHOR_REACH = 0.12;
+/** Seconds to either side of a set pair in which its line must hold. */
+const ANCHOR_HOLDS = 0.25;
 
 /** A stretch of new frames on one line; `line` is −1 where nothing of the old soundtrack is heard. */
 export interface Segment {
@@ -117,7 +119,7 @@ export function segmentOf(costs: LineCosts, line: number, from: number, to: numb
 function forcedLines(lines: readonly Line[], anchors: readonly AnchorPair[], frame: number): boolean[] | null {
 	const time = frame / FINE_RATE;
 	for (const anchor of anchors) {
-		if (Math.abs(time - anchor.new) > 0.05) continue;
+		if (Math.abs(time - anchor.new) > ANCHOR_HOLDS) continue;
 		return [...lines.map((line) => Math.abs(oldOn(line, anchor.new) - anchor.old) <= ANCHOR_REACH), false];
 	}
 	return null;

@@ -49,7 +49,11 @@ export interface MapOptions {
  * @returns an edit map; where the new soundtrack is another piece its verdict is "different" and nothing is carried
  */
 export function mapEdit(old: Samples, current: Samples, options: MapOptions = {}): EditMap {
-	const progress = options.onProgress ?? (() => {});
+	let reached = 0;
+	const progress = (share: number, stage: string): void => {
+		reached = Math.max(reached, share);
+		options.onProgress?.(reached, stage);
+	};
 	const anchors = options.anchors ?? [];
 	const oldDuration = (old.channels[0]?.length ?? 0) / old.sampleRate;
 	const newDuration = (current.channels[0]?.length ?? 0) / current.sampleRate;

@@ -4,6 +4,10 @@ import { type EditMap, isCarried, newTimeIn, type Stretch } from "./edit-map.ts"
 /** Seconds beside a joint's own spread within which a moment is on the joint; and the most that it ever is. */
 const ON_JOINT = 0.01;
 const MOST_ON_JOINT = 0.06;
+/** Seconds: a stretch that begins or ends this near to an end of the old soundtrack reaches it. */
+const AT_END = 0.05;
+/** Seconds by which the edge of a trimmed end may be off. */
+const TRIM = 0.003;
 
 export interface Place {
 	readonly stretch: Stretch;
@@ -25,12 +29,11 @@ export function placesOf(map: EditMap, old: number): Place[] {
 	const places: Place[] = [];
 	for (const stretch of map.stretches) {
 		if (!isCarried(stretch)) continue;
-		const opens = stretch.old[0] - spreadAt(map, stretch.new[0]);
-		const spread = spreadAt(map, stretch.new[1]);
-		const atEnd = spread === 0 && Math.abs(stretch.old[1] - map.oldDuration) < 0.05;
-		if (old >= opens && (old < stretch.old[1] - spread || (atEnd && old <= map.oldDuration))) {
-			places.push({ stretch, time: newTimeIn(stretch, old) });
-		}
+		const [first, last] = stretch.old;
+		const opens = first < AT_END ? Math.min(0, first) : first - Math.max(TRIM, spreadAt(map, stretch.new[0]));
+		const closes =
+			map.oldDuration - last < AT_END ? Number.POSITIVE_INFINITY : last - Math.max(TRIM, spreadAt(map, stretch.new[1]));
+		if (old >= opens && old < closes && old <= map.oldDuration) places.push({ stretch, time: newTimeIn(stretch, old) });
 	}
 	return places;
 }
