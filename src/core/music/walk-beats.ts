@@ -21,9 +21,9 @@ const TEMPO_STEP = 1.02;
 /** Cost of a change of interval by a factor e. */
 const TEMPO_CHANGE = 150;
 /** Cost of any change of interval, however great: music does jump. */
-const TEMPO_JUMP = 22;
-/** Intervals that a cheap change may reach; further costs more than a jump (7 · ln 1.02 · 150 = 21). */
-const REACH = 7;
+const TEMPO_JUMP = 35;
+/** Intervals that a cheap change may reach; further costs more than a jump (12 · ln 1.02 · 150 = 36). */
+const REACH = 12;
 /** Cost of a beat that falls a frame off its interval. */
 const JITTER = 0.7;
 /** Log-odds are held within this. */
