@@ -73,8 +73,10 @@ export function makeTrack({ seconds, bpm = 120, sampleRate = 22050, channels = 1
 			const t = i / sampleRate;
 			const tone = chord.reduce((sum, hertz) => sum + Math.sin(2 * Math.PI * hertz * (loud ? 2 : 1) * t), 0);
 			let value = 0.08 * (loud ? 1.6 : 1) * tone * Math.exp(-4 * t);
-			// Bar lines are heavy, back beats are bright.
-			if (beat % 4 === 0) value += 0.5 * Math.sin(2 * Math.PI * 60 * t) * Math.exp(-18 * t);
+			// Bar lines are heavy, back beats are bright, and quiet eighths say which of the two is the beat.
+			if (beat % 2 === 0) value += (beat % 4 === 0 ? 0.5 : 0.35) * Math.sin(2 * Math.PI * 60 * t) * Math.exp(-18 * t);
+			const eighth = t - Math.floor(t / (interval / 2)) * (interval / 2);
+			value += 0.06 * noise() * Math.exp(-90 * eighth);
 			if (beat % 2 === 1) value += (loud ? 0.3 : 0.15) * noise() * Math.exp(-40 * t);
 			out[start + i] += value;
 		}
