@@ -32,7 +32,8 @@ export function carrySections(
 	const parts: Part[] = [];
 	const position = (seconds: number): number => {
 		const exact = newBeats.positionAt(seconds);
-		const nearest = Math.round(exact);
+		// Adding 0 turns −0 into 0: a file has no −0, and equal shows must give equal files.
+		const nearest = Math.round(exact) + 0;
 		return Math.abs(exact - nearest) <= ON_BEAT ? nearest : exact;
 	};
 	for (const stretch of map.stretches) {
