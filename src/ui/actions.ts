@@ -167,12 +167,12 @@ export function listActions(parts: ActionParts): Action[] {
 	return [...show, ...edit, ...musicActions(parts, hasShow, canEdit), ...cueActions(parts, canEdit), ...view];
 }
 
-function musicActions({ studio, loop }: ActionParts, hasShow: () => boolean, canEdit: () => boolean): Action[] {
+function musicActions({ studio }: ActionParts, hasShow: () => boolean, canEdit: () => boolean): Action[] {
 	const { commands, store } = studio;
 	const beatMap = () => createBeatMap(store.getState().show?.grid ?? { beats: [], bars: [] });
 	const step = (beats: number, toBar: boolean) => () => {
 		const map = beatMap();
-		const position = map.positionAt(loop.now);
+		const position = map.positionAt(studio.player.heardAt(performance.now()));
 		const ahead = beats > 0;
 		let target = ahead ? Math.floor(position + 1e-3) + 1 : Math.ceil(position - 1e-3) - 1;
 		if (toBar) {
@@ -189,7 +189,7 @@ function musicActions({ studio, loop }: ActionParts, hasShow: () => boolean, can
 		if (cues.length === 0) return;
 		const { selection } = store.getState();
 		const current = selection.kind === "cues" ? cues.findIndex((cue) => cue.id === selection.ids.at(-1)) : -1;
-		const here = map.positionAt(loop.now);
+		const here = map.positionAt(studio.player.heardAt(performance.now()));
 		const nearest =
 			direction > 0
 				? cues.findIndex((cue) => cuePosition(cue, map) >= here - 1e-6)
@@ -199,7 +199,7 @@ function musicActions({ studio, loop }: ActionParts, hasShow: () => boolean, can
 		commands.selectCue(cue.id);
 		commands.seek(map.secondsAt(cuePosition(cue, map)));
 	};
-	const beatHere = () => Math.round(beatMap().positionAt(loop.now));
+	const beatHere = () => Math.round(beatMap().positionAt(studio.player.heardAt(performance.now())));
 	return [
 		{
 			id: "play",
@@ -247,7 +247,7 @@ function musicActions({ studio, loop }: ActionParts, hasShow: () => boolean, can
 			run: () => {
 				if (store.getState().playback.loop) return commands.setLoop(null);
 				const map = beatMap();
-				const position = map.positionAt(loop.now);
+				const position = map.positionAt(studio.player.heardAt(performance.now()));
 				const section = store.getState().show?.sections.find((one) => position >= one.from && position < one.to);
 				if (section) commands.setLoop({ from: map.secondsAt(section.from), to: map.secondsAt(section.to) });
 			},

@@ -2,7 +2,7 @@ import { createBeatMap } from "../core/show/index.ts";
 import type { Action, ActionParts } from "./actions.ts";
 
 /** What is done to the selected cues, or puts new ones in where the ear is. */
-export function cueActions({ studio, loop }: ActionParts, canEdit: () => boolean): Action[] {
+export function cueActions({ studio }: ActionParts, canEdit: () => boolean): Action[] {
 	const { commands, store } = studio;
 	const selected = (): readonly string[] => {
 		const { selection } = store.getState();
@@ -10,7 +10,11 @@ export function cueActions({ studio, loop }: ActionParts, canEdit: () => boolean
 	};
 	const hasCues = () => canEdit() && selected().length > 0;
 	const here = () =>
-		Math.round(createBeatMap(store.getState().show?.grid ?? { beats: [], bars: [] }).positionAt(loop.now));
+		Math.round(
+			createBeatMap(store.getState().show?.grid ?? { beats: [], bars: [] }).positionAt(
+				studio.player.heardAt(performance.now()),
+			),
+		);
 	const only = () => {
 		const [id, ...others] = selected();
 		const cue = id === undefined || others.length > 0 ? undefined : store.getState().show?.cues.byId[id];
