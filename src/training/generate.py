@@ -123,6 +123,17 @@ def perform(rng, piece, times, tempo, channels, hits):
     return melodic, drumming, lead_in, (min(onsets), max(onsets)) if onsets else (0, -1)
 
 
+def label(piece, count, first, last, with_drums):
+    """Which of `count` beats are to be learnt, and which of them are downbeats: no beats before the first note or past the last."""
+    index = np.arange(count)
+    heard = (index >= first - 0.25) & (index <= last + 0.25)
+    downbeats = {start for start, _ in piece['bars']}
+    if piece.get('own') is not None and not with_drums:
+        heard &= index % 2 == 0
+        downbeats = set(piece['own'])
+    return heard, np.array([i in downbeats for i in index])
+
+
 def render(rng, synths, songs):
     style, tempo, piece, source, times = compose(rng, songs)
     channels, hits = orchestrate(rng, piece, style, tempo)
@@ -139,10 +150,7 @@ def render(rng, synths, songs):
             x = sound.duck(x, lead_in + times, rng.uniform(0.4, 0.95), rng.uniform(0.5, 0.95) * 60 / tempo)
         x = x / level(x) + beat / level(beat) * 10 ** (rng.normal(0, 4) / 20)
     x = sound.roughen(rng, sound.to_features_rate(x))
-    index = np.arange(times.size)
-    heard = (index >= first - 0.25) & (index <= last + 0.25)    # no beats before the first note or past the last
-    downbeats = {start for start, _ in piece['bars']}
-    flags = np.array([i in downbeats for i in index])
+    heard, flags = label(piece, times.size, first, last, bool(drumming))
     return features.hear(x).astype(np.float16), (times + lead_in)[heard].astype(np.float32), flags[heard], source
 
 

@@ -1,7 +1,8 @@
 """The music itself before anybody plays it: bars, chords and tunes, counted in beats.
 
 A piece is a dictionary: bars [(position of the first beat, metre)], chords [(from, to, root, tones, bass)] with pitch classes,
-lines {name: [(from, to, pitch, velocity)]} and compound (True where the beat divides in three). Positions are beats from the piece's start.
+lines {name: [(from, to, pitch, velocity)]}, compound (True where the beat divides in three) and, of a song with doubled beats, own (its own
+bars' positions). Positions are beats from the piece's start.
 Two sources: songs of POP909 (Wang et al. 2020, MIT licence), whose tunes, chords and piano are kept, and pieces made up by rules.
 """
 import json
@@ -53,7 +54,10 @@ def take_excerpt(rng, song, tempo, beats):
     metre = song['metre']
     first = -(-int((song['first'] - start) * fold) % metre)     # the bar that the excerpt begins in may begin before it
     bars = [(b, metre) for b in range(first, int(beats), metre)]
-    return dict(bars=bars, beats=beats, chords=chords, lines=lines, compound=False)
+    # Doubled beats are what people tap to drums; without drums they go with the song's own, and so do its bars.
+    first = -(-int(song['first'] - start) % metre) * fold
+    own = list(range(first, int(beats) + 1, metre * fold)) if fold == 2 else None
+    return dict(bars=bars, beats=beats, chords=chords, lines=lines, compound=False, own=own)
 
 
 PROGRESSIONS = [[0, 5, 3, 4], [0, 4, 5, 3], [5, 3, 0, 4], [0, 3, 4, 4], [0, 3, 0, 4], [0, 5, 1, 4], [1, 4, 0, 0], [0, 2, 3, 4], [0, 6, 3, 0],
