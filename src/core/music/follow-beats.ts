@@ -39,7 +39,7 @@ export function followBeats(
 	onProgress?: (share: number) => void,
 ): BarWalk {
 	const score = scoreBeats(activation);
-	const own = walkBeats(score, null, (share) => onProgress?.(share * 0.6)).beats;
+	const own = walkBeats(score, null, (share) => onProgress?.(share * 0.6));
 	const divide = (beats: Float64Array) => layBars(weighDownbeats(activation, harmony, beats));
 	if (own.length < 3) {
 		const { places, metres } = divide(own);
@@ -49,7 +49,7 @@ export function followBeats(
 	const consider = (beats: Float64Array): void => {
 		if (beats.length >= 3) readings.push({ beats, barGains: divide(beats).gains });
 	};
-	const walkAt = (factor: number) => walkBeats(score, { beats: own, factor }).beats;
+	const walkAt = (factor: number) => walkBeats(score, { beats: own, factor });
 	consider(own);
 	for (const first of [0, 1]) consider(everySecond(own, first));
 	let slow = 0;

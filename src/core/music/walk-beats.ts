@@ -48,13 +48,6 @@ const DURATIONS = 3;
 const START = 254;
 const JUMP = 255;
 
-/** Beats in seconds, not yet moved onto the sound's own onsets. */
-export interface BeatWalk {
-	readonly beats: Float64Array;
-	/** Log-likelihood ratio against a soundtrack without beats, less what is left uncovered. */
-	readonly score: number;
-}
-
 /** Log-odds of a beat at each hundredth of a second, the sum of three frames (a beat is not a point). */
 export function scoreBeats(activation: ActivationCurves): Float64Array {
 	const { beat, rate } = activation;
@@ -101,12 +94,13 @@ function guideBand(
  * The most likely walk over scores as `scoreBeats` gives them.
  * @param guide beats (at least two) and a factor: the walk then keeps near factor times their interval
  * @param onProgress called with 0..1 about fifty times
+ * @returns beats in seconds, not yet moved onto the sound's own onsets
  */
 export function walkBeats(
 	score: Float64Array,
 	guide: { readonly beats: Float64Array; readonly factor: number } | null = null,
 	onProgress?: (share: number) => void,
-): BeatWalk {
+): Float64Array {
 	const frames = score.length;
 	const intervals: number[] = [];
 	for (let tau = (60 / FASTEST) * RATE; tau <= (60 / SLOWEST) * RATE + 1e-9; tau *= TEMPO_STEP) intervals.push(tau);
@@ -214,5 +208,5 @@ export function walkBeats(
 		i = how === JUMP ? jumps[t] & 255 : i + (how % (2 * REACH + 1)) - REACH;
 		t -= shortest[i] + way;
 	}
-	return { beats: Float64Array.from(beats.reverse()), score: top };
+	return Float64Array.from(beats.reverse());
 }
