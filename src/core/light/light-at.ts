@@ -100,7 +100,6 @@ const [NOTHING, COLOUR, LEVEL_ALONE] = [0, 1, 2];
 /** Writes colour and intensity of each slot into the scene's buffers. */
 function showScene(program: LightProgram, scene: Scene, t: number): void {
 	const { colour, fresh, level, reached, picture } = scene;
-	const beats = program.beatMap.positionAt(t);
 	reached.fill(NOTHING);
 	level.fill(0);
 	for (let i = bottomOf(program.colours, t); i < program.colours.length; i++) {
@@ -109,8 +108,9 @@ function showScene(program: LightProgram, scene: Scene, t: number): void {
 		const brush = scene.brushOf(timed.cue);
 		const members = scene.membersOf(timed.cue.group);
 		if (brush === null || members === null) continue;
-		const share = shareOf(timed, t);
-		brush(beats - timed.position, share < 1 ? fresh : colour);
+		const time = seenUntil(program.colours, i, t);
+		const share = shareOf(timed, time);
+		brush(program.beatMap.positionAt(time) - timed.position, share < 1 ? fresh : colour);
 		for (const slot of members) {
 			// The first colour that a slot gets doesn't come up through black: there it is the intensity that fades.
 			const part = reached[slot] === NOTHING ? 1 : share;
@@ -126,8 +126,9 @@ function showScene(program: LightProgram, scene: Scene, t: number): void {
 		if (timed.start > t) break;
 		const members = scene.membersOf(timed.cue.group);
 		if (members === null) continue;
-		const share = shareOf(timed, t);
-		const wanted = levelOf(program, timed.cue, t);
+		const time = seenUntil(program.levels, i, t);
+		const share = shareOf(timed, time);
+		const wanted = levelOf(program, timed.cue, time);
 		for (const slot of members) {
 			level[slot] += (wanted - level[slot]) * share;
 			if (reached[slot] === NOTHING) reached[slot] = LEVEL_ALONE;
@@ -143,6 +144,15 @@ function shareOf<C>(timed: TimedCue<C>, t: number): number {
 	return timed.full > timed.start ? Math.min(1, Math.max(0, (t - timed.start) / (timed.full - timed.start))) : 1;
 }
 
+/** A fade starts from what was shown: a cue stands still from the moment at which the next one begins to cover it. */
+function seenUntil<C extends { group: string }>(cues: readonly TimedCue<C>[], index: number, t: number): number {
+	const { group } = cues[index].cue;
+	for (let i = index + 1; i < cues.length && cues[i].start <= t; i++) {
+		if (cues[i].cue.group === "all" || cues[i].cue.group === group) return cues[i].start;
+	}
+	return t;
+}
+
 /** The last cue on `all` that has wholly faded in: what lies below it is not seen. */
 function bottomOf<C extends { group: string }>(cues: readonly TimedCue<C>[], t: number): number {
 	let low = 0;
@@ -152,7 +162,10 @@ function bottomOf<C extends { group: string }>(cues: readonly TimedCue<C>[], t: 
 		if (cues[middle].start <= t) low = middle + 1;
 		else high = middle;
 	}
-	for (let i = low - 1; i > 0; i--) if (cues[i].cue.group === "all" && cues[i].full <= t) return i;
+	for (let i = low - 1; i > 0; i--) {
+		// A fade that was covered half way leaves what lies below it in sight.
+		if (cues[i].cue.group === "all" && cues[i].full <= seenUntil(cues, i, t)) return i;
+	}
 	return 0;
 }
 
