@@ -18,6 +18,8 @@ export interface Figure {
 const LOWEST = 20;
 /** From the audience-side edge of the volume to the nearest slot, m. */
 const AWAY = 20;
+/** How far another seed moves a figure from the energy that it suits best. */
+const SHUFFLE = 0.9;
 const MARGINS = [1.45, 1.2, 1.06];
 
 interface Idea {
@@ -86,7 +88,7 @@ const IDEAS: readonly Idea[] = [
 ];
 
 /**
- * Figures for a fleet in a venue, in an order that the seed turns; the whole fleet is in each as far as its shape
+ * Figures for a fleet in a venue; another seed than 1 deals their energies out anew; the whole fleet is in each as far as its shape
  * allows.
  * @throws StarstaveError where the venue is too small for any
  */
@@ -104,8 +106,9 @@ export function chooseFigures(fleet: Fleet, venue: Venue, seed: number): Figure[
 		);
 	}
 	const centred = centreHeights(figures, venue);
-	const turn = createRandom(seed).below(centred.length);
-	return seed === 1 ? centred : [...centred.slice(turn), ...centred.slice(0, turn)];
+	if (seed === 1) return centred;
+	const random = createRandom(seed);
+	return centred.map(({ formation, energy }) => ({ formation, energy: energy + SHUFFLE * (random.next() - 0.5) }));
 }
 
 function fitFigure(idea: Idea, raw: Shape, fleet: Fleet, venue: Venue): Formation | null {
