@@ -62,6 +62,7 @@ export function createStaves(host: HTMLElement, handlers: StavesHandlers): Stave
 	let model: StavesModel | null = null;
 	let beatMap: BeatMap = createBeatMap({ beats: [], bars: [] });
 	let at = 0;
+	let revealed: StaveRow | null = null;
 	let peaksKey = "";
 	let lastAnalysis: Analysis | null = null;
 
@@ -168,7 +169,10 @@ export function createStaves(host: HTMLElement, handlers: StavesHandlers): Stave
 		},
 		reveal(position) {
 			const row = rows.find(({ picture }) => picture && position >= picture.row.from && position < picture.row.to);
-			row?.element.scrollIntoView({ block: "nearest" });
+			// Once a row: who scrolls away while the music plays is left alone until the next line.
+			if (row === undefined || row === revealed) return;
+			revealed = row;
+			row.element.scrollIntoView({ block: "nearest" });
 		},
 		resize: lay,
 		destroy() {
