@@ -91,6 +91,14 @@ function sameAround(old: Samples, current: Samples, oldTime: number, newTime: nu
 	return unlike < 0.1 * reach;
 }
 
+/** The old time that a new one truly came from, or null. */
+function trueSource(truth: Truth, time: number): number | null {
+	const piece = truth.kept.find(([, , new0, new1]) => time >= new0 && time < new1);
+	if (piece === undefined) return null;
+	const [old0, old1, new0, new1] = piece;
+	return old0 + ((time - new0) * (old1 - old0)) / (new1 - new0);
+}
+
 function showOnBeats(beats: readonly number[], downbeats: readonly number[], samples: Samples): Show {
 	const starts = downbeats.map((time) => beats.findIndex((beat) => Math.abs(beat - time) < 1e-3)).filter((i) => i >= 0);
 	const cue = (at: number) => ({
@@ -167,15 +175,18 @@ async function measureOne(json: string): Promise<Figures> {
 		const guess = fit.offset + fit.stretch * move.oldTime;
 		const outside = guess < 0 || guess > duration;
 		if (outside) baseline.baselineOrphansSaid++;
+		const source = said === null ? null : trueSource(truth, said);
+		// Where bars repeat sample for sample, the other one is as good.
+		const equivalent = said !== null && source !== null && sameAround(old, old, move.oldTime, source);
 		if (places.length === 0) {
 			tally.orphansTrue++;
-			if (said === null || sameAround(old, current, move.oldTime, said)) tally.orphansRight++;
+			if (said === null || equivalent) tally.orphansRight++;
 			if (outside) baseline.baselineOrphansRight++;
 			continue;
 		}
 		tally.surviving++;
 		const off = said === null ? Number.POSITIVE_INFINITY : Math.min(...places.map((place) => Math.abs(place - said)));
-		if (off <= tolerance || (said !== null && sameAround(old, current, move.oldTime, said))) tally.right++;
+		if (off <= tolerance || equivalent) tally.right++;
 		if (off < 1) tally.worst = Math.max(tally.worst, off);
 		if (Math.min(...places.map((place) => Math.abs(place - guess))) <= tolerance) baseline.baselineRight++;
 		const away = said !== null && !joints.some((joint) => Math.abs(joint - said) <= NEAR_JOINT);

@@ -39,6 +39,8 @@ const FURTHEST_INSIDE = 1.8;
 const LONGEST_FADE = 2.5;
 /** Seconds by which samples may stop being the same before the rough joint with new music. */
 const EARLIER = 0.4;
+/** Seconds: a fade between two places of the same music is no longer than this. */
+const LONGEST_BLIP = 0.1;
 /** Seconds by which quiet samples may shift the middle of a fade from the joint. */
 const OFF_MIDDLE = 0.0015;
 /** Seconds a fade may hide of a joint with new music. */
@@ -57,10 +59,15 @@ export function placeJoint(evidence: JointEvidence, before: Segment, after: Segm
 	const rough = (after.from - 0.5) / FINE_RATE;
 	const left = before.line >= 0 ? lines[before.line] : null;
 	const right = after.line >= 0 ? lines[after.line] : null;
-	const end = left === null ? null : lastSame(evidence, left, before, rough);
-	const start = right === null ? null : firstSame(evidence, right, after, rough);
+	// A joint lies between its two segments' other ends, wherever the samples go on being the same.
+	const earliest = (before.from + 1) / FINE_RATE;
+	const latest = (after.to - 1) / FINE_RATE;
+	const end = left === null ? null : lastSame(evidence, left, before, rough, latest);
+	const start = right === null ? null : firstSame(evidence, right, after, rough, earliest);
 	if (end !== null && start !== null) {
 		if (start <= end) {
+			const fade = fadeWithin(evidence, left as KnownLine, right as KnownLine, start, end);
+			if (fade !== null) return fade;
 			// Both are the same samples here: every place between is right, so a beat it is.
 			const at = onBeat(evidence, left, right, start, end, rough) ?? Math.min(end, Math.max(start, rough));
 			return { at, spread: 0, ambiguous: end - start >= AMBIGUOUS ? [start, end] : null };
@@ -90,6 +97,33 @@ export function placeJoint(evidence: JointEvidence, before: Segment, after: Segm
 	return joint;
 }
 
+/**
+ * Where both lines are the same music for a while, the editor's fade still tells: at the joint neither line's samples
+ * are. Looked for where the left line breaks off and where the right one begins.
+ */
+function fadeWithin(
+	evidence: JointEvidence,
+	left: KnownLine,
+	right: KnownLine,
+	start: number,
+	end: number,
+): Joint | null {
+	const { old, current, sampleRate } = evidence;
+	const beyond = Math.round(LONGEST_BLIP * sampleRate);
+	const joint = (from: number, to: number): Joint => ({
+		at: Math.round((from + to) / 2) / sampleRate,
+		spread: (to - from) / 2 / sampleRate,
+		ambiguous: null,
+	});
+	const last = Math.round(end * sampleRate);
+	const back = sameUntil(old, current, right.offset as number, last + beyond, -1, 2 * beyond);
+	if (back > last && back < last + beyond) return joint(last, back);
+	const first = Math.round(start * sampleRate);
+	const on = sameUntil(old, current, left.offset as number, first - beyond, 1, 2 * beyond) + 1;
+	if (on < first && on > first - beyond) return joint(on, first);
+	return null;
+}
+
 /** A pause beside new music belongs to the stretch as long as it is a pause in both soundtracks. */
 function throughQuiet(evidence: JointEvidence, line: KnownLine, joint: Joint, step: 1 | -1): Joint {
 	const { oldLevels, newLevels } = evidence;
@@ -106,7 +140,13 @@ function throughQuiet(evidence: JointEvidence, line: KnownLine, joint: Joint, st
 }
 
 /** New second after the last same sample of the left line, or null where its samples aren't the same. */
-function lastSame(evidence: JointEvidence, line: KnownLine, segment: Segment, rough: number): number | null {
+function lastSame(
+	evidence: JointEvidence,
+	line: KnownLine,
+	segment: Segment,
+	rough: number,
+	latest: number,
+): number | null {
 	if (line.offset === null) return null;
 	const { old, current, sampleRate } = evidence;
 	const most = Math.round((FOLLOWED + FURTHEST_INSIDE) * sampleRate);
@@ -114,13 +154,19 @@ function lastSame(evidence: JointEvidence, line: KnownLine, segment: Segment, ro
 		const from = Math.round((rough - inside) * sampleRate);
 		if (from < (segment.from / FINE_RATE) * sampleRate) break;
 		const last = sameUntil(old, current, line.offset, from, 1, most);
-		if (last - from > 0.01 * sampleRate) return (last + 1) / sampleRate;
+		if (last - from > 0.01 * sampleRate) return Math.min((last + 1) / sampleRate, latest);
 	}
 	return null;
 }
 
 /** New second of the first same sample of the right line, or null. */
-function firstSame(evidence: JointEvidence, line: KnownLine, segment: Segment, rough: number): number | null {
+function firstSame(
+	evidence: JointEvidence,
+	line: KnownLine,
+	segment: Segment,
+	rough: number,
+	earliest: number,
+): number | null {
 	if (line.offset === null) return null;
 	const { old, current, sampleRate } = evidence;
 	const most = Math.round((FOLLOWED + FURTHEST_INSIDE) * sampleRate);
@@ -128,7 +174,7 @@ function firstSame(evidence: JointEvidence, line: KnownLine, segment: Segment, r
 		const from = Math.round((rough + inside) * sampleRate);
 		if (from > (segment.to / FINE_RATE) * sampleRate) break;
 		const first = sameUntil(old, current, line.offset, from, -1, most);
-		if (from - first > 0.01 * sampleRate) return first / sampleRate;
+		if (from - first > 0.01 * sampleRate) return Math.max(first / sampleRate, earliest);
 	}
 	return null;
 }

@@ -12,7 +12,14 @@ import { type JointEvidence, type KnownLine, placeJoint } from "./joints.ts";
 import { oldOn } from "./line.ts";
 import { findSegments, type LineCosts, lineCosts, type Segment, segmentOf } from "./line-path.ts";
 import { FINE_RATE, type Heard, listen, SOFT } from "./listen.ts";
-import { createMonoReader, type MonoReader, sameOffset, sameShare, sameSoundtrack } from "./same-samples.ts";
+import {
+	createMonoReader,
+	type MonoReader,
+	sameFrames,
+	sameOffset,
+	sameShare,
+	sameSoundtrack,
+} from "./same-samples.ts";
 
 /** Seconds: stretches shorter than this are chance, and than that even where their samples are the same. */
 const SHORTEST = 1.5;
@@ -78,8 +85,9 @@ export function mapEdit(old: Samples, current: Samples, options: MapOptions = {}
 	);
 	progress(0.95, "placing joints");
 	const readers = { old: createMonoReader(old), current: createMonoReader(current) };
-	const known = lines.map((line) => knownLine(line, old, current, readers));
-	const believed = believe(heardOld, heard, known, anchors);
+	const found = lines.map((line) => knownLine(line, old, current, readers));
+	const known = [...found, ...plainLines(found, durations, old, current, readers)];
+	const believed = believe(heardOld, heard, known, anchors, readers);
 	const evidence: JointEvidence = {
 		lines: believed.lines,
 		costs: believed.costs,
@@ -92,9 +100,9 @@ export function mapEdit(old: Samples, current: Samples, options: MapOptions = {}
 	};
 	const { pieces, joints } = toPieces(evidence, believed.segments, heardOld, heard, durations);
 	progress(1, "done");
-	const found = pieces.reduce((sum, piece) => sum + piece.newTo - piece.newFrom, 0);
+	const carried = pieces.reduce((sum, piece) => sum + piece.newTo - piece.newFrom, 0);
 	const shorter = Math.min(oldDuration, newDuration);
-	if (anchors.length === 0 && found < Math.min(0.5 * shorter, Math.max(LEAST_FOUND, LEAST_SHARE * shorter))) {
+	if (anchors.length === 0 && carried < Math.min(0.5 * shorter, Math.max(LEAST_FOUND, LEAST_SHARE * shorter))) {
 		return assembleMap(
 			durations,
 			"different",
@@ -130,12 +138,35 @@ function withAnchors(lines: readonly SureLine[], anchors: readonly AnchorPair[])
 	return all;
 }
 
-function knownLine(
-	line: SureLine,
+interface Readers {
+	readonly old: MonoReader;
+	readonly current: MonoReader;
+}
+
+/**
+ * Most edits keep the start, the end or both. Where music repeats itself to the sample the path may have gone by another
+ * place that is just as alike; these two lines let it go by the plain one.
+ */
+function plainLines(
+	found: readonly KnownLine[],
+	{ oldDuration, newDuration }: { readonly oldDuration: number; readonly newDuration: number },
 	old: Samples,
 	current: Samples,
-	readers: { old: MonoReader; current: MonoReader },
-): KnownLine {
+	readers: Readers,
+): KnownLine[] {
+	const plain: KnownLine[] = [];
+	for (const at of new Set([0, oldDuration - newDuration])) {
+		const from = Math.max(0, -at);
+		const to = Math.min(newDuration, oldDuration - at);
+		const whole = { at, rate: 1, from, to, inliers: 1, points: 1, by: "phase" as const };
+		const line = to > from ? knownLine(whole, old, current, readers) : null;
+		if (line === null || line.offset === null) continue;
+		if (found.every((other) => other.offset !== line.offset)) plain.push(line);
+	}
+	return plain;
+}
+
+function knownLine(line: SureLine, old: Samples, current: Samples, readers: Readers): KnownLine {
 	const { sampleRate } = current;
 	if (old.sampleRate !== sampleRate || line.by !== "phase") return { ...line, offset: null };
 	const offset = sameOffset(
@@ -156,10 +187,19 @@ interface Believed {
 }
 
 /** The path over the lines; lines whose every segment is weak are struck off and the path found again. */
-function believe(old: Heard, current: Heard, known: readonly KnownLine[], anchors: readonly AnchorPair[]): Believed {
+function believe(
+	old: Heard,
+	current: Heard,
+	known: readonly KnownLine[],
+	anchors: readonly AnchorPair[],
+	readers: Readers,
+): Believed {
 	let lines = known;
 	for (;;) {
 		const costs = lineCosts(old.fine, current.fine, current.levels, lines);
+		lines.forEach((line, k) => {
+			if (line.offset !== null) believeSamples(costs, k, line.offset, readers, current.samples.sampleRate);
+		});
 		const segments = toEnds(costs, bridge(costs, findSegments(costs, lines, anchors)));
 		const firm = segments.filter((segment) => segment.line >= 0 && segment.evidence >= MUCH);
 		const rates = firm.map((segment) => lines[segment.line].rate);
@@ -173,6 +213,13 @@ function believe(old: Heard, current: Heard, known: readonly KnownLine[], anchor
 		}
 		lines = strong;
 	}
+}
+
+/** Frames whose samples are the same cost nothing: features of 10 ms are a little less alike where frames don't fall together. */
+function believeSamples(costs: LineCosts, line: number, offset: number, readers: Readers, sampleRate: number): void {
+	const centres = Int32Array.from({ length: costs.frames }, (_, f) => Math.round((f * sampleRate) / FINE_RATE));
+	const same = sameFrames(readers.old, readers.current, offset, centres, Math.round((0.4 * sampleRate) / FINE_RATE));
+	for (let f = 0; f < costs.frames; f++) if (same[f] === 1) costs.values[line * costs.frames + f] = 0;
 }
 
 function isStrong(segment: Segment, line: KnownLine, rates: readonly number[]): boolean {

@@ -119,6 +119,34 @@ export function sameUntil(
 	return last;
 }
 
+/**
+ * Whether short frames are the same along an offset.
+ * @param centres new samples, one a frame
+ * @param reach samples to either side that a frame spans
+ * @returns 1 for each frame whose samples are the same and not all silent
+ */
+export function sameFrames(
+	old: MonoReader,
+	current: MonoReader,
+	offset: number,
+	centres: Int32Array,
+	reach: number,
+): Uint8Array {
+	const same = new Uint8Array(centres.length);
+	// Every few samples will do: where the music differs, nearly every sample does.
+	const step = Math.max(1, Math.floor(reach / 8));
+	centres.forEach((centre, f) => {
+		let heard = false;
+		for (let i = centre - reach; i <= centre + reach; i += step) {
+			const value = current.at(i);
+			if (Math.abs(value - old.at(i + offset)) > SAME) return;
+			heard ||= Math.abs(value) > 4 * SAME;
+		}
+		if (heard) same[f] = 1;
+	});
+	return same;
+}
+
 /** True where two soundtracks are the same to the last sample. */
 export function sameSoundtrack(old: Samples, current: Samples): boolean {
 	if (old.sampleRate !== current.sampleRate || old.channels.length !== current.channels.length) return false;
