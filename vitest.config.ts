@@ -10,6 +10,7 @@ export default defineConfig({
 					exclude: ["tests/e2e/**", "tests/bench/**"],
 					environment: "node",
 					testTimeout: 120_000,
+					hookTimeout: 120_000,
 				},
 			},
 			{

@@ -142,14 +142,23 @@ function withSoundtrack(show: Show, { soundtrack, analysis }: Heard) {
 	});
 }
 
-/** A show from a file, with its soundtrack where that lies beside it or is kept in the browser. */
-export async function openShow(bench: Workbench, file: NamedBytes, beside: NamedBytes | null): Promise<void> {
+/**
+ * A show from a file, with its soundtrack where that lies beside it or is kept in the browser.
+ * @param isWanted false once something else has been asked for: then what stands here stays
+ */
+export async function openShow(
+	bench: Workbench,
+	file: NamedBytes,
+	beside: NamedBytes | null,
+	isWanted: () => boolean,
+): Promise<void> {
 	const { parts, ledger, notices, keeper } = bench;
 	const read = await ledger.run(
 		`Opening ${file.name}`,
 		(signal) => parts.workers.run("read", { bytes: file.bytes }, { signal, urgent: true }),
 		{ quiet: true },
 	);
+	if (!isWanted()) return;
 	const wanted = read.show.soundtrack;
 	await replaceShow(bench, read.show, { fileName: file.name, unsaved: false });
 	if (wanted === null) return;

@@ -25,9 +25,17 @@ export function showCommands(bench: Workbench): ShowCommands {
 		return readOnly === null;
 	};
 
+	// The demo comes in by itself at the start: who opens something of their own meanwhile must not lose it to the demo.
+	let asked = 0;
+	const begin = (): (() => boolean) => {
+		const turn = ++asked;
+		return () => turn === asked;
+	};
+
 	return {
 		newShow: (drones) => {
 			if (!mayReplace()) return false;
+			begin();
 			try {
 				void replaceShow(bench, createShow(drones), { fileName: null, unsaved: false }).catch(notices.sayError);
 				return true;
@@ -40,8 +48,9 @@ export function showCommands(bench: Workbench): ShowCommands {
 			attempt(async () => {
 				if (/\.(svg|csv)$/i.test(file.name)) return (await addFormationFrom(bench, file)) !== null;
 				if (!mayReplace()) return false;
+				const isWanted = begin();
 				const named = { name: file.name, bytes: new Uint8Array(await file.arrayBuffer()) };
-				if (looksLikeShow(named.bytes)) await openShow(bench, named, null);
+				if (looksLikeShow(named.bytes)) await openShow(bench, named, null, isWanted);
 				else await openSoundtrack(bench, named);
 				return true;
 			}),
@@ -51,13 +60,16 @@ export function showCommands(bench: Workbench): ShowCommands {
 				if (parts.fetchDemo === null) {
 					throw new StarstaveError("show", "There is no demo show here; open a soundtrack of your own instead.");
 				}
+				const isWanted = begin();
 				const demo = await parts.fetchDemo();
-				await openShow(bench, demo.show, demo.soundtrack);
-				return true;
+				if (!isWanted()) return false;
+				await openShow(bench, demo.show, demo.soundtrack, isWanted);
+				return isWanted();
 			}),
 		bringBackPrevious: () =>
 			attempt(async () => {
 				if (!mayReplace()) return false;
+				begin();
 				const kept = await keeper.read("previous");
 				if (kept === null) return false;
 				const { show } = await parts.workers.run("read", { bytes: toBytes(kept.content) }, { urgent: true });
