@@ -1,6 +1,6 @@
 import { readFileSync } from "node:fs";
 import { unzipSync } from "fflate";
-import type { Page } from "playwright-core";
+import type { Locator, Page } from "playwright-core";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import { judgeFlightPaths } from "../oracles/judge-flight-paths.ts";
 import { readTable } from "../oracles/read-flight-paths.ts";
@@ -41,10 +41,14 @@ describe("cutting a routine to a client's soundtrack", () => {
 		// To the first transition by the keyboard; its departure stands under the playhead.
 		await page.getByRole("button", { name: "To the start (Home)" }).click();
 		const heading = page.getByRole("heading", { name: /^Cue \d+ · to / });
-		for (let i = 0; i < 12 && (await heading.count()) === 0; i++) await page.keyboard.press("ArrowDown");
+		for (let i = 0; i < 12 && (await heading.count()) === 0; i++) {
+			await page.keyboard.press("ArrowDown");
+			// The margin is drawn in a later frame: looked at too early, one press too many is made.
+			await page.waitForTimeout(250);
+		}
 		expect(await heading.count()).toBe(1);
 		const departs = await page.getByLabel("departs").inputValue();
-		const head = (await page.locator(".stave-playhead").boundingBox())!;
+		const head = await atRest(page.locator(".stave-playhead"));
 		const row = (await page.locator(".stave-body", { has: page.locator(".stave-playhead") }).boundingBox())!;
 		const hand = { x: head.x + 1, y: row.y + 90 };
 
@@ -58,7 +62,9 @@ describe("cutting a routine to a client's soundtrack", () => {
 			await page.mouse.move(hand.x + pulled, hand.y, { steps: 2 });
 			await page.waitForTimeout(40);
 		}
-		expect(await short.count()).toBe(1);
+		await page.waitForTimeout(250);
+		expect(pulled).toBeLessThan(400);
+		expect(await short.count()).toBeGreaterThan(0);
 		await page.mouse.move(hand.x, hand.y, { steps: 4 });
 		await short.waitFor({ state: "detached" });
 		await expect.poll(() => page.getByLabel("departs").inputValue()).toBe(departs);
@@ -149,6 +155,18 @@ async function openTrack(page: Page, name: string, wav: Uint8Array): Promise<voi
 	await input.setInputFiles({ name, mimeType: "audio/wav", buffer: Buffer.from(wav) });
 	await page.getByRole("button", { name: `${name.replace(/\..*$/, "")}: menu` }).waitFor();
 	await quiet(page);
+}
+
+/** Where something stands once two looks a few frames apart agree. */
+async function atRest(locator: Locator): Promise<{ x: number; y: number }> {
+	let last = { x: Number.NaN, y: Number.NaN };
+	for (let look = 0; look < 40; look++) {
+		const box = await locator.boundingBox();
+		if (box !== null && box.x === last.x && box.y === last.y) return box;
+		if (box !== null) last = box;
+		await locator.page().waitForTimeout(250);
+	}
+	throw new Error("It never came to rest.");
 }
 
 /** Nothing is under way any more. */
