@@ -2,9 +2,10 @@ import { AudioLines, Pause, Play, Redo2, Repeat, SkipBack, Undo2, ZoomIn, ZoomOu
 import type { ReactNode } from "react";
 import { useStore } from "zustand";
 import { desk } from "./desk.ts";
+import { loopSection } from "./loop-section.ts";
 import { Tally } from "./Masthead.tsx";
 import { useStudio, useStudioState } from "./studio-context.ts";
-import { useBeatMap, useFrameLoop } from "./use-frame.ts";
+import { useFrameLoop } from "./use-frame.ts";
 import { zoomStrip } from "./zoom-strip.ts";
 
 /** Playing, looking closer, and taking back: the few things the hand needs all day. */
@@ -12,18 +13,10 @@ export function TransportBar() {
 	const studio = useStudio();
 	const loop = useFrameLoop();
 	const { commands } = studio;
-	const beatMap = useBeatMap();
 	const playback = useStudioState((state) => state.playback);
 	const undo = useStudioState((state) => state.undo);
 	const redo = useStudioState((state) => state.redo);
-	const sections = useStudioState((state) => state.show?.sections);
 	const strip = useStore(desk, (state) => state.strip !== null);
-	const loopSection = () => {
-		if (playback.loop) return commands.setLoop(null);
-		const position = beatMap.positionAt(loop.now);
-		const section = sections?.find((one) => position >= one.from && position < one.to);
-		if (section) commands.setLoop({ from: beatMap.secondsAt(section.from), to: beatMap.secondsAt(section.to) });
-	};
 	return (
 		<div className="transport" role="toolbar" aria-label="Playing">
 			<div className="group">
@@ -40,7 +33,7 @@ export function TransportBar() {
 				<IconButton
 					name="Loop this section (L)"
 					pressed={playback.loop !== null}
-					onPress={loopSection}
+					onPress={() => loopSection(studio)}
 					icon={<Repeat size={18} />}
 				/>
 				<IconButton

@@ -3,6 +3,7 @@ import { createBeatMap, cuePosition, cuesInTime } from "../core/show/index.ts";
 import { cueActions } from "./cue-actions.ts";
 import { desk, type MarginPage } from "./desk.ts";
 import type { FrameLoop } from "./frame-loop.ts";
+import { loopSection } from "./loop-section.ts";
 import { zoomStrip } from "./zoom-strip.ts";
 
 /** Everything that can be done without pointing: one list for the menu, the command finder and the keyboard. */
@@ -244,13 +245,7 @@ function musicActions({ studio }: ActionParts, hasShow: () => boolean, canEdit: 
 			keys: "L",
 			theme: "Music",
 			available: hasShow,
-			run: () => {
-				if (store.getState().playback.loop) return commands.setLoop(null);
-				const map = beatMap();
-				const position = map.positionAt(studio.player.heardAt(performance.now()));
-				const section = store.getState().show?.sections.find((one) => position >= one.from && position < one.to);
-				if (section) commands.setLoop({ from: map.secondsAt(section.from), to: map.secondsAt(section.to) });
-			},
+			run: () => loopSection(studio),
 		},
 		{
 			id: "downbeat",

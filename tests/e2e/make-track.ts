@@ -1,4 +1,5 @@
 import { createRandom } from "../../src/core/maths/index.ts";
+import { writeWav } from "../cli/make-track.ts";
 
 /** A soundtrack made for the tests: its beats are known, and it is not the demo. */
 export interface MadeTrack {
@@ -63,29 +64,5 @@ export function makeTrack(bpm: number, bars: number, seed = 1): MadeTrack {
 				(t) => 0.07 * Math.sin(2 * Math.PI * tone(pitch) * t) * Math.min(1, t * 30) * Math.exp(-t * 0.6),
 			);
 	}
-	return { wav: writeWav(sound), beats, duration };
-}
-
-/** 16-bit PCM, mono. */
-export function writeWav(sound: Float32Array, sampleRate = RATE): Uint8Array {
-	const bytes = new Uint8Array(44 + sound.length * 2);
-	const view = new DataView(bytes.buffer);
-	const word = (at: number, text: string) => {
-		for (let i = 0; i < text.length; i++) view.setUint8(at + i, text.charCodeAt(i));
-	};
-	word(0, "RIFF");
-	view.setUint32(4, 36 + sound.length * 2, true);
-	word(8, "WAVEfmt ");
-	view.setUint32(16, 16, true);
-	view.setUint16(20, 1, true);
-	view.setUint16(22, 1, true);
-	view.setUint32(24, sampleRate, true);
-	view.setUint32(28, sampleRate * 2, true);
-	view.setUint16(32, 2, true);
-	view.setUint16(34, 16, true);
-	word(36, "data");
-	view.setUint32(40, sound.length * 2, true);
-	for (let i = 0; i < sound.length; i++)
-		view.setInt16(44 + 2 * i, Math.round(32767 * Math.max(-1, Math.min(1, sound[i] * 0.7))), true);
-	return bytes;
+	return { wav: writeWav([sound.map((value) => 0.7 * value)], RATE), beats, duration };
 }

@@ -1,17 +1,15 @@
 import { type ColourCue, cuePosition, type Paint } from "../../core/show/index.ts";
 import { ChoiceField, ColourField, NumberField } from "../fields/Field.tsx";
-import { PlaceField } from "../fields/PlaceField.tsx";
 import { sayBeats, sayPlace } from "../say-place.ts";
 import { useStudio, useStudioState } from "../studio-context.ts";
 import { useBeatMap } from "../use-frame.ts";
-import { CueFields, useGroupChoices } from "./CueFields.tsx";
+import { CueFields, LightCueFields } from "./CueFields.tsx";
 import { freshPaint, PAINT_KINDS, paintFields, sayPaint } from "./paint-fields.ts";
 
 export function ColourDetail({ cue }: { cue: ColourCue }) {
 	const { commands } = useStudio();
 	const beatMap = useBeatMap();
 	const readOnly = useStudioState((state) => state.readOnly !== null);
-	const groups = useGroupChoices();
 	const at = cuePosition(cue, beatMap);
 	const set = (paint: Paint) => commands.changeCue(cue.id, { paint });
 	return (
@@ -25,28 +23,7 @@ export function ColourDetail({ cue }: { cue: ColourCue }) {
 				{cue.fade > 0 ? `, faded in over ${sayBeats(cue.fade)}` : ", at once"}.
 			</p>
 			<div className="fields">
-				<PlaceField
-					label="at"
-					value={at}
-					beatMap={beatMap}
-					disabled={readOnly}
-					onSet={(position) => commands.moveCue(cue.id, position)}
-				/>
-				<NumberField
-					label="fade"
-					unit="beats"
-					value={cue.fade}
-					step={0.5}
-					disabled={readOnly}
-					onSet={(fade) => commands.changeCue(cue.id, { fade })}
-				/>
-				<ChoiceField
-					label="group"
-					value={cue.group}
-					choices={groups}
-					disabled={readOnly}
-					onSet={(group) => commands.changeCue(cue.id, { group })}
-				/>
+				<LightCueFields cue={cue} />
 				<ChoiceField
 					label="pattern"
 					value={cue.paint.kind}

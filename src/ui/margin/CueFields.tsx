@@ -1,5 +1,6 @@
-import type { Cue } from "../../core/show/index.ts";
-import { CheckField, TextField } from "../fields/Field.tsx";
+import { type ColourCue, type Cue, cuePosition, type IntensityCue } from "../../core/show/index.ts";
+import { CheckField, ChoiceField, NumberField, TextField } from "../fields/Field.tsx";
+import { PlaceField } from "../fields/PlaceField.tsx";
 import { useStudio, useStudioState } from "../studio-context.ts";
 import { useBeatMap } from "../use-frame.ts";
 
@@ -52,8 +53,42 @@ export function CueFields({ cue }: { cue: Cue }) {
 	);
 }
 
+/** Where a cue of light begins, how long it fades, and for whom it is. */
+export function LightCueFields({ cue }: { cue: ColourCue | IntensityCue }) {
+	const { commands } = useStudio();
+	const beatMap = useBeatMap();
+	const readOnly = useStudioState((state) => state.readOnly !== null);
+	const groups = useGroupChoices();
+	return (
+		<>
+			<PlaceField
+				label="at"
+				value={cuePosition(cue, beatMap)}
+				beatMap={beatMap}
+				disabled={readOnly}
+				onSet={(position) => commands.moveCue(cue.id, position)}
+			/>
+			<NumberField
+				label="fade"
+				unit="beats"
+				value={cue.fade}
+				step={0.5}
+				disabled={readOnly}
+				onSet={(fade) => commands.changeCue(cue.id, { fade })}
+			/>
+			<ChoiceField
+				label="group"
+				value={cue.group}
+				choices={groups}
+				disabled={readOnly}
+				onSet={(group) => commands.changeCue(cue.id, { group })}
+			/>
+		</>
+	);
+}
+
 /** Groups that a cue can be for: all, the show's groups of drones, and the groups of its formations. */
-export function useGroupChoices(): { value: string; name: string }[] {
+function useGroupChoices(): { value: string; name: string }[] {
 	const show = useStudioState((state) => state.show);
 	const slots = useStudioState((state) => state.slots);
 	const names = new Set<string>(["all"]);

@@ -1,5 +1,6 @@
 import type { Limits } from "../../core/show/index.ts";
 import { NumberField } from "../fields/Field.tsx";
+import { PointFields } from "../fields/PointFields.tsx";
 import { useStudio, useStudioState } from "../studio-context.ts";
 import { Cautions } from "./Margin.tsx";
 
@@ -23,7 +24,6 @@ const SIDES = [
 	{ side: "min", name: "from" },
 	{ side: "max", name: "to" },
 ] as const;
-const AXES = ["right", "away", "up"] as const;
 
 /** What the drones can do and where they may be. */
 export function FleetVenue() {
@@ -82,23 +82,16 @@ export function FleetVenue() {
 			</p>
 			<h3>Flight volume and buffer</h3>
 			<div className="fields">
-				{SIDES.map(({ side, name }) =>
-					AXES.map((axis, i) => (
-						<NumberField
-							key={side + axis}
-							label={`${axis}, ${name}`}
-							unit="m"
-							step={5}
-							value={venue.volume[side][i]}
-							disabled={readOnly}
-							onSet={(value) => {
-								const corner: [number, number, number] = [...venue.volume[side]];
-								corner[i] = value;
-								return commands.setVenue({ volume: { ...venue.volume, [side]: corner } });
-							}}
-						/>
-					)),
-				)}
+				{SIDES.map(({ side, name }) => (
+					<PointFields
+						key={side}
+						label={(axis) => `${axis}, ${name}`}
+						step={5}
+						value={venue.volume[side]}
+						disabled={readOnly}
+						onSet={(corner) => commands.setVenue({ volume: { ...venue.volume, [side]: corner } })}
+					/>
+				))}
 				<NumberField
 					label="buffer around it"
 					unit="m"
@@ -115,20 +108,12 @@ export function FleetVenue() {
 					disabled={readOnly}
 					onSet={(wind) => commands.setVenue({ wind })}
 				/>
-				{AXES.map((axis, i) => (
-					<NumberField
-						key={axis}
-						label={`seat, ${axis}`}
-						unit="m"
-						value={venue.seat[i]}
-						disabled={readOnly}
-						onSet={(value) => {
-							const seat: [number, number, number] = [...venue.seat];
-							seat[i] = value;
-							return commands.setVenue({ seat });
-						}}
-					/>
-				))}
+				<PointFields
+					label={(axis) => `seat, ${axis}`}
+					value={venue.seat}
+					disabled={readOnly}
+					onSet={(seat) => commands.setVenue({ seat })}
+				/>
 			</div>
 			<Cautions />
 		</>

@@ -1,6 +1,7 @@
 import { sizeToSpacing } from "../../core/formation/index.ts";
 import type { Formation, Shape } from "../../core/show/index.ts";
 import { ChoiceField, NumberField, TextField } from "../fields/Field.tsx";
+import { PointFields } from "../fields/PointFields.tsx";
 import { useStudio, useStudioState } from "../studio-context.ts";
 import { shapeNumbers } from "./shape-fields.ts";
 
@@ -23,11 +24,6 @@ export function FormationFields({ formation }: { formation: Formation }) {
 	);
 	const { shape, place } = formation;
 	const set = (next: Shape) => commands.changeFormation(formation.id, { shape: next });
-	const move = (axis: number, value: number) => {
-		const position: [number, number, number] = [...place.position];
-		position[axis] = value;
-		return commands.changeFormation(formation.id, { place: { ...place, position } });
-	};
 	return (
 		<section className="formation-fields" aria-label={`Formation ${formation.name || formation.id}`}>
 			<h3>{formation.name || formation.id}</h3>
@@ -60,16 +56,11 @@ export function FormationFields({ formation }: { formation: Formation }) {
 						onSet={(value) => set({ ...shape, [field.key]: value } as Shape)}
 					/>
 				))}
-				{["right", "away", "up"].map((name, axis) => (
-					<NumberField
-						key={name}
-						label={name}
-						unit="m"
-						value={place.position[axis]}
-						disabled={readOnly}
-						onSet={(value) => move(axis, value)}
-					/>
-				))}
+				<PointFields
+					value={place.position}
+					disabled={readOnly}
+					onSet={(position) => commands.changeFormation(formation.id, { place: { ...place, position } })}
+				/>
 				<NumberField
 					label="turn"
 					unit="°"

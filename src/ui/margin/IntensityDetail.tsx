@@ -1,10 +1,9 @@
 import { cuePosition, type IntensityCue } from "../../core/show/index.ts";
 import { ChoiceField, NumberField } from "../fields/Field.tsx";
-import { PlaceField } from "../fields/PlaceField.tsx";
 import { sayBeats, sayPlace } from "../say-place.ts";
 import { useStudio, useStudioState } from "../studio-context.ts";
 import { useBeatMap } from "../use-frame.ts";
-import { CueFields, useGroupChoices } from "./CueFields.tsx";
+import { CueFields, LightCueFields } from "./CueFields.tsx";
 
 /** Faders are perceptual, the file holds linear light: 50 % on the fader is a quarter of the light. */
 const toFader = (light: number) => Math.round(Math.sqrt(light) * 100);
@@ -15,7 +14,6 @@ export function IntensityDetail({ cue }: { cue: IntensityCue }) {
 	const beatMap = useBeatMap();
 	const analysis = useStudioState((state) => state.analysis);
 	const readOnly = useStudioState((state) => state.readOnly !== null);
-	const groups = useGroupChoices();
 	const at = cuePosition(cue, beatMap);
 	const level = cue.level;
 	const follows = typeof level === "number" ? "steady" : level.follow;
@@ -34,28 +32,7 @@ export function IntensityDetail({ cue }: { cue: IntensityCue }) {
 				{cue.fade > 0 ? ` within ${sayBeats(cue.fade)}` : ", at once"}.
 			</p>
 			<div className="fields">
-				<PlaceField
-					label="at"
-					value={at}
-					beatMap={beatMap}
-					disabled={readOnly}
-					onSet={(position) => commands.moveCue(cue.id, position)}
-				/>
-				<NumberField
-					label="fade"
-					unit="beats"
-					value={cue.fade}
-					step={0.5}
-					disabled={readOnly}
-					onSet={(fade) => commands.changeCue(cue.id, { fade })}
-				/>
-				<ChoiceField
-					label="group"
-					value={cue.group}
-					choices={groups}
-					disabled={readOnly}
-					onSet={(group) => commands.changeCue(cue.id, { group })}
-				/>
+				<LightCueFields cue={cue} />
 				<ChoiceField
 					label="goes with"
 					value={follows}

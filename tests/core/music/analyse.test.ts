@@ -156,6 +156,7 @@ describe("an honest answer to anything", () => {
 		expect(analysis.notes.join(" ")).toMatch(/No beat was found/);
 	};
 	const expectDoubt = (analysis: Analysis): void => {
+		// Below this the analysis tells the user that it is in doubt; noise and mumbling come to about 0.27.
 		expect(analysis.confidence).toBeLessThan(0.35);
 		expect(analysis.notes.join(" ")).toMatch(/No beat was found|beat is uncertain/);
 	};
