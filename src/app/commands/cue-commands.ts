@@ -1,7 +1,7 @@
+import { applyRemedy } from "../../core/flight/index.ts";
 import {
 	addCue,
 	changeCue,
-	changeFormation,
 	copyCues,
 	find,
 	moveCue,
@@ -45,17 +45,7 @@ export function cueCommands(bench: Workbench): CueCommands {
 			return copies;
 		},
 		removeCues: (ids) => bench.edit(`Remove ${called(ids)}`, (draft) => removeCues(draft, ids)) !== null,
-		applyRemedy: ({ change, edit }) =>
-			bench.edit(change.replace(/\.$/, ""), (draft) => {
-				if (edit.cue !== undefined) {
-					const { id, ...fields } = edit.cue;
-					changeCue(draft, id, fields);
-				}
-				if (edit.formation !== undefined) {
-					const { id, ...place } = edit.formation;
-					const before = find(draft.formations, id);
-					if (before !== undefined) changeFormation(draft, id, { place: { ...before.place, ...place } });
-				}
-			}) !== null,
+		applyRemedy: (remedy) =>
+			bench.edit(remedy.change.replace(/\.$/, ""), (draft) => applyRemedy(draft, remedy)) !== null,
 	};
 }

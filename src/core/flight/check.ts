@@ -1,4 +1,5 @@
-import type { Proof, Remedy, Verdict } from "./plan.ts";
+import type { Proof, Verdict } from "./plan.ts";
+import type { Remedy } from "./remedy/remedy.ts";
 
 /** Answer of the feasibility check for one leg of the show, as the command line prints it. */
 export interface TransitionCheck {

@@ -62,22 +62,3 @@ export interface Proof {
 }
 
 export type Verdict = "flies" | "tight" | "too-fast" | "too-close" | "out-of-venue";
-
-/** A computed change that makes a transition fly, with what it costs. */
-export interface Remedy {
-	readonly kind: string;
-	/** The change as a sentence: "Depart 3 beats earlier." */
-	readonly change: string;
-	/** What it costs, as a sentence. */
-	readonly cost: string;
-	/** Fields of the transition cue to set, or formations to replace; applied as one edit. */
-	readonly edit: {
-		readonly cue?: {
-			readonly id: string;
-			readonly at?: number;
-			readonly length?: number;
-			readonly timeLaw?: "s-curve" | "minimum-jerk";
-		};
-		readonly formation?: { readonly id: string; readonly scale?: number; readonly turn?: number };
-	};
-}

@@ -1,7 +1,7 @@
 import { describe, expect, it } from "vitest";
-import { flyShow } from "../../../src/core/flight/index.ts";
+import { applyRemedy, flyShow, type Remedy } from "../../../src/core/flight/index.ts";
 import { fleetSlotsOf, takeoffSlots } from "../../../src/core/formation/index.ts";
-import { readShow, type Show } from "../../../src/core/show/index.ts";
+import { applyEdit, changeCue, readShow, type Show } from "../../../src/core/show/index.ts";
 
 /** 16 drones, three discs 40 m apart in turn; beats every half second. */
 function showOf(cues: object[]): Show {
@@ -27,14 +27,13 @@ function showOf(cues: object[]): Show {
 }
 const check = (show: Show) => flyShow(show, fleetSlotsOf(show), takeoffSlots(show)).check;
 
-/** The show with a remedy's edit of its cue in place. */
-function applied(show: Show, edit: { cue?: { id: string } }): Show {
-	const { id, ...change } = edit.cue!;
-	return {
-		...show,
-		cues: { ...show.cues, byId: { ...show.cues.byId, [id]: { ...show.cues.byId[id], ...change } } },
-	} as Show;
-}
+const applied = (show: Show, remedy: Pick<Remedy, "steps">): Show =>
+	applyEdit(show, (draft) => applyRemedy(draft, remedy)).show;
+const changeOf = (remedy: Remedy) => {
+	const [step] = remedy.steps;
+	if (step.do !== "change-cue") throw new Error("a remedy in time changes a cue");
+	return step.change;
+};
 
 describe("remedies of a transition that is too fast", () => {
 	const show = showOf([
@@ -51,13 +50,13 @@ describe("remedies of a transition that is too fast", () => {
 	});
 
 	it("make it fly when they are applied, and a beat less would not", () => {
-		for (const { edit } of remedies) {
-			expect(check(applied(show, edit)).transitions[0].verdicts).toContain("flies");
-			const length = (edit.cue!.length ?? 0) - 1;
-			const at = edit.cue!.at === 60 ? 60 : edit.cue!.at! + 1;
-			expect(
-				check(applied(show, { cue: { id: "c1", at, length } as { id: string } })).transitions[0].verdicts,
-			).toContain("too-fast");
+		for (const remedy of remedies) {
+			expect(check(applied(show, remedy)).transitions[0].verdicts).toContain("flies");
+			const change = changeOf(remedy);
+			const length = (change.length ?? 0) - 1;
+			const at = change.at === 60 ? 60 : change.at! + 1;
+			const less = applyEdit(show, (draft) => changeCue(draft, "c1", { at, length })).show;
+			expect(check(less).transitions[0].verdicts).toContain("too-fast");
 		}
 	});
 
@@ -69,8 +68,8 @@ describe("remedies of a transition that is too fast", () => {
 		]);
 		const kinds = check(cramped).transitions[1].remedies.map(({ kind }) => kind);
 		expect(kinds).toEqual(["depart-and-arrive"]);
-		const { edit } = check(cramped).transitions[1].remedies[0];
-		expect(check(applied(cramped, edit)).transitions.map(({ verdicts }) => verdicts.includes("flies"))).toEqual([
+		const [remedy] = check(cramped).transitions[1].remedies;
+		expect(check(applied(cramped, remedy)).transitions.map(({ verdicts }) => verdicts.includes("flies"))).toEqual([
 			true,
 			true,
 			true,
@@ -85,6 +84,6 @@ describe("remedies of a transition that is too fast", () => {
 		const between = showOf([{ at: 60, length: needed + fast, formation: "b", timeLaw: "minimum-jerk" }]);
 		const answer = check(between).transitions[0];
 		expect(answer.remedies[0]?.kind).toBe("time-law");
-		expect(check(applied(between, answer.remedies[0].edit)).transitions[0].verdicts).toContain("flies");
+		expect(check(applied(between, answer.remedies[0])).transitions[0].verdicts).toContain("flies");
 	});
 });

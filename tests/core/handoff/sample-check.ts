@@ -31,7 +31,16 @@ const leg: TransitionCheck = {
 /** A check as the feasibility check would give it. */
 export function checkOf(verdicts: TransitionCheck["verdicts"]): ShowCheck {
 	const flies = verdicts.includes("flies");
-	const remedies = [{ kind: "earlier", change: "Depart 3 beats earlier.", cost: "The hold loses 1.5 s.", edit: {} }];
+	const remedies = [
+		{
+			kind: "earlier",
+			change: "Depart 3 beats earlier.",
+			cost: "The hold loses 1.5 s.",
+			loss: 0.1,
+			steps: [],
+			ghost: null,
+		},
+	];
 	return {
 		flies,
 		launch: { ...leg, id: "launch", from: "take-off grid", to: "f1" },

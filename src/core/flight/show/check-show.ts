@@ -5,9 +5,9 @@ import type { FormationCheck, ShowCheck, TransitionCheck } from "../check.ts";
 import type { LegProblem } from "../leg-problem.ts";
 import type { Plan, Proof, Verdict } from "../plan.ts";
 import { neededTime, type PlanProof, proofFor, provePlanOnce } from "../proof/prove-plan.ts";
+import { findRemedies } from "../remedy/remedies-in-time.ts";
 import type { Leg, ShowFlight } from "../show-flight.ts";
 import { legProblems } from "./leg-problems.ts";
-import { findRemedies } from "./remedies.ts";
 
 const OWN_PLACE = "each drone to its own place";
 

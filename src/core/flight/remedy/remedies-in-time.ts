@@ -1,11 +1,13 @@
-import { type BeatMap, createBeatMap, type Show } from "../../show/index.ts";
-import { GAP_TOLERANCE, LIMIT_TOLERANCE, TIGHT_SHARE } from "../../units/index.ts";
+import { type BeatMap, type CueChange, createBeatMap, type Show } from "../../show/index.ts";
+import { GAP_TOLERANCE, LIMIT_TOLERANCE } from "../../units/index.ts";
 import type { TransitionCheck } from "../check.ts";
 import type { LegProblem } from "../leg-problem.ts";
-import type { Plan, Remedy } from "../plan.ts";
+import type { Plan } from "../plan.ts";
 import { planLeg } from "../plan-leg.ts";
 import { provePlanOnce } from "../proof/prove-plan.ts";
-import { withKey } from "./leg-problems.ts";
+import { withKey } from "../show/leg-problems.ts";
+import type { Remedy } from "./remedy.ts";
+import { inHand, sayBeats } from "./say-cost.ts";
 
 /**
  * What would make transitions fly that are too fast. A plan doesn't depend on the time it has, so an earlier departure
@@ -36,19 +38,17 @@ export function findRemedies(
 	return found;
 }
 
+const changing = (id: string, change: CueChange): Pick<Remedy, "steps" | "ghost"> => ({
+	steps: [{ do: "change-cue", id, change }],
+	ghost: null,
+});
+
+/** A departure costs as much as it takes of the hold before it. */
+function shareLost(beats: number, hold: number | null, taken: number): number {
+	return hold === null ? Math.min(0.2, 0.01 * beats) : 0.05 + 0.4 * Math.min(1, taken / Math.max(1e-9, hold));
+}
+
 const enough = (available: number, needed: number): boolean => needed <= available * (1 + LIMIT_TOLERANCE);
-
-function sayBeats(beats: number): string {
-	return beats === 1 ? "1 beat" : `${beats} beats`;
-}
-
-/** What the change leaves in hand. */
-function inHand(available: number, needed: number): string {
-	const spare = available - needed;
-	return needed > (1 - TIGHT_SHARE) * available
-		? `leaves ${spare.toFixed(1)} s in hand, which is tight`
-		: `leaves ${spare.toFixed(1)} s in hand`;
-}
 
 /** Fewest whole beats by which the departure must come forward; null where the picture before has no time to give. */
 function departEarlier(check: TransitionCheck, beatMap: BeatMap, before: number): Remedy | null {
@@ -67,7 +67,8 @@ function departEarlier(check: TransitionCheck, beatMap: BeatMap, before: number)
 			kind: "depart-earlier",
 			change: `Depart ${sayBeats(beats)} earlier.`,
 			cost,
-			edit: { cue: { id: check.id, at: departs.beat - beats, length: arrives.beat - departs.beat + beats } },
+			loss: shareLost(beats, Number.isFinite(hold) ? departs.time - before : null, departs.time - time),
+			...changing(check.id, { at: departs.beat - beats, length: arrives.beat - departs.beat + beats }),
 		};
 	}
 	return null;
@@ -91,7 +92,8 @@ function arriveLater(check: TransitionCheck, beatMap: BeatMap, after: number): R
 			kind: "arrive-later",
 			change: `Arrive ${sayBeats(beats)} later.`,
 			cost: `The picture stands ${off}; ${inHand(available, needed)}.`,
-			edit: { cue: { id: check.id, at: departs.beat, length: arrives.beat - departs.beat + beats } },
+			loss: 0.1 + (place.beat < 1.01 ? 0 : 0.15) + Math.min(0.3, 0.02 * beats),
+			...changing(check.id, { at: departs.beat, length: arrives.beat - departs.beat + beats }),
 		};
 	}
 	return null;
@@ -113,7 +115,8 @@ function departAndArrive(check: TransitionCheck, beatMap: BeatMap, before: numbe
 			kind: "depart-and-arrive",
 			change: `Depart ${sayBeats(early)} earlier and arrive ${sayBeats(late)} later.`,
 			cost: `The picture before has no hold left to speak of; ${inHand(time - start, needed)}.`,
-			edit: { cue: { id: check.id, at: departs.beat - early, length: arrives.beat - departs.beat + early + late } },
+			loss: 0.5,
+			...changing(check.id, { at: departs.beat - early, length: arrives.beat - departs.beat + early + late }),
 		};
 	}
 	return null;
@@ -132,6 +135,7 @@ function fasterLaw(check: TransitionCheck, show: Show, problem: LegProblem | und
 		kind: "time-law",
 		change: "Fly on the S-curve instead of minimum jerk.",
 		cost: `It starts and stops less softly; ${inHand(check.available, plan.shortest)}.`,
-		edit: { cue: { id: check.id, timeLaw: "s-curve" } },
+		loss: 0.02,
+		...changing(check.id, { timeLaw: "s-curve" }),
 	};
 }
