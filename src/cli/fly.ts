@@ -1,5 +1,7 @@
 import {
 	assembleFlight,
+	type Care,
+	careFor,
 	checkShow,
 	legProblems,
 	type Plan,
@@ -19,6 +21,7 @@ export interface Flown {
 	readonly show: Show;
 	readonly flight: ShowFlight;
 	readonly check: ShowCheck;
+	readonly care: Care;
 	readonly light: LightProgram;
 	readonly flashes: readonly Flash[];
 	/** What could not be judged, and why. */
@@ -86,7 +89,9 @@ export async function flyWhole(
 		timing.prove[id] = (timing.prove[id] ?? 0) + (proofs.seconds.get(key) ?? 0);
 		proofs.seconds.delete(key);
 	}
-	progress.tell(0.95, "light");
+	progress.tell(0.93, "falls, wakes and lag");
+	const care = careFor(show, slots, flight);
+	progress.tell(0.97, "light");
 	const light = compileLight(show, flight.stays, slots, curves ?? []);
 	const end = endOfShow(show, createBeatMap(show.grid));
 	const flashes = findFlashes(light, Math.min(0, flight.begins), Math.max(end, flight.ends));
@@ -94,5 +99,5 @@ export async function flyWhole(
 	if (curves === null) {
 		notes.push("The soundtrack was not at hand, so flashes of what follows the music can't be judged.");
 	}
-	return { show, flight, check, light, flashes, notes, timing };
+	return { show, flight, check, care, light, flashes, notes, timing };
 }

@@ -138,6 +138,13 @@ describe("check", () => {
 		for (const formation of check.formations) expect(Object.keys(formation)).toEqual(["id", "gap", "verdicts"]);
 		expect(check.endurance.airborne).toBeLessThan(check.endurance.limit);
 		expect(Array.isArray(check.flashes)).toBe(true);
+		expect(Object.keys(check.care)).toEqual(["fallZone", "wakeHolds", "wakeRemedies", "asFlown", "airtime"]);
+		expect(check.care.fallZone.outline.length).toBeGreaterThan(8);
+		expect(check.care.asFlown.legs.map(({ id }: { id: string }) => id)).toEqual(
+			check.transitions.map(({ id }: { id: string }) => id),
+		);
+		// From the first motor start to the last landing no drone runs longer.
+		expect(check.care.airtime.longest.seconds).toBeLessThanOrEqual(check.endurance.airborne + 1e-9);
 	});
 
 	it("plans a large fleet in workers", () => {

@@ -1,4 +1,4 @@
-import type { TransitionCheck } from "../../core/flight/index.ts";
+import { sayCare, type TransitionCheck } from "../../core/flight/index.ts";
 import { flashSentence } from "../../core/handoff/index.ts";
 import { find, type Show } from "../../core/show/index.ts";
 import type { Answer } from "../answer.ts";
@@ -10,8 +10,8 @@ import { hearCurves } from "../tracks.ts";
 
 /** The check under the keys of the JSON answer. */
 export function describeCheck(flown: Flown) {
-	const { check, flashes, notes, timing } = flown;
-	return { ...check, flashes, notes: [...check.notes, ...notes], timing };
+	const { check, care, flashes, notes, timing } = flown;
+	return { ...check, care, flashes, notes: [...check.notes, ...notes], timing };
 }
 
 function legLine(show: Show, leg: TransitionCheck): string {
@@ -24,7 +24,7 @@ function legLine(show: Show, leg: TransitionCheck): string {
 
 /** The check in lines for people: every leg, what is wrong beside them, the answer last. */
 export function checkLines(show: Show, flown: Flown): string[] {
-	const { check, flashes, notes } = flown;
+	const { check, care, flashes, notes } = flown;
 	const legs = [check.launch, ...check.transitions, check.landing].filter((leg) => leg !== null);
 	const { airborne, limit } = check.endurance;
 	const lines = legs.map((leg) => legLine(show, leg));
@@ -34,6 +34,10 @@ export function checkLines(show: Show, flown: Flown): string[] {
 		lines.push(`Formation ${name}: ${verdicts.join(" ")}, smallest distance ${gap.toFixed(3)} m`);
 	}
 	lines.push(`Endurance: ${airborne.toFixed(0)} s from motor start, limit ${limit.toFixed(0)} s`);
+	for (const { heading, sentences, attention } of sayCare(show, care)) {
+		lines.push(`${attention ? "Care" : "Note"}, ${heading.toLowerCase()}: ${sentences.join(" ")}`);
+	}
+	for (const { change, cost } of care.wakeRemedies) lines.push(`  ${change} ${cost}`);
 	for (const flash of flashes) lines.push(`Warning: ${flashSentence(flash)}`);
 	for (const note of [...check.notes, ...notes]) lines.push(note);
 	lines.push(check.flies ? "The show flies." : "The show can't be flown as it stands.");

@@ -1,3 +1,10 @@
+export type { Airtime } from "./care/airtime.ts";
+export type { AsFlown, LegAsFlown } from "./care/as-flown.ts";
+export { type Care, careFor } from "./care/care.ts";
+export type { FallZone } from "./care/fall-zone.ts";
+export { type CareTopic, sayCare } from "./care/say-care.ts";
+export type { WakeHold } from "./care/wake.ts";
+export type { WakeRemedy } from "./care/wake-remedies.ts";
 export type { FormationCheck, ShowCheck, TransitionCheck } from "./check.ts";
 export { straightTime } from "./law/straight-time.ts";
 export { lawAt, lawDuration } from "./law/time-law.ts";

@@ -9,7 +9,7 @@ export { find, toList, toOrdered } from "./ordered.ts";
 export { type PackedShow, packShow, unpackShow } from "./packed-show.ts";
 export { readShow, toShow, toShowFile, writeShow } from "./read-show.ts";
 export type { ColourCue, Cue, IntensityCue, TransitionCue } from "./schema/cue.ts";
-export type { Box, Fleet, Limits, Takeoff, Venue } from "./schema/fleet-venue.ts";
+export type { Box, Fleet, Limits, Takeoff, Tracking, Venue, Wake } from "./schema/fleet-venue.ts";
 export type { Paint } from "./schema/paint.ts";
 export type { Formation, Place, Shape } from "./schema/shape.ts";
 export {

@@ -15,11 +15,32 @@ export const limits = v.looseObject({
 	endurance: v.optional(above(0, 86400), 900),
 	reserve: v.optional(between(0, 0.95), 0.25),
 });
+/**
+ * How a drone follows its path: a second-order response with integral action and a delay in its loop. Hz, –, s, s,
+ * share by which the drones of a fleet differ. Defaults: common practice, no source.
+ */
+export const tracking = v.looseObject({
+	frequency: v.optional(between(0.05, 10), 0.8),
+	damping: v.optional(between(0.1, 5), 0.8),
+	/** Seconds in which it makes up for a steady push. */
+	recovery: v.optional(between(0.1, 1000), 2),
+	delay: v.optional(between(0, 2), 0.05),
+	spread: v.optional(between(0, 0.5), 0.1),
+});
+/** The air that a drone throws down, as an upright cylinder below it, m. Defaults: common practice, no source. */
+export const wake = v.looseObject({
+	radius: v.optional(between(0, 100), 0.5),
+	reach: v.optional(between(0, 200), 8),
+});
 export const fleet = v.looseObject({
 	count: whole(0, 20000),
 	spares: v.optional(whole(0, 20000), 0),
 	mass: v.optional(above(0, 1000), 0.5),
 	positionError: v.optional(between(0, 100), 0.1),
+	/** m/s at which its drag bears its weight: how fast it falls in the end with its motors dead. */
+	terminalSpeed: v.optional(between(1, 200), 15),
+	tracking: v.optional(tracking, {}),
+	wake: v.optional(wake, {}),
 	limits: v.optional(limits, {}),
 });
 export const box = v.looseObject({ min: triple, max: triple });
@@ -31,6 +52,8 @@ export const venue = v.looseObject({
 	loudspeaker: v.optional(triple, [0, -50, 4]),
 	blocked: v.optional(v.array(box), []),
 	wind: v.optional(between(0, 60), 0),
+	/** m/s by which a gust is faster than the wind. */
+	gust: v.optional(between(0, 60), 3),
 });
 /** The take-off grid. `waves` leave `interval` seconds apart, straight up to `climbTo` metres. */
 export const takeoff = v.looseObject({
@@ -42,6 +65,8 @@ export const takeoff = v.looseObject({
 });
 
 export type Limits = v.InferOutput<typeof limits>;
+export type Tracking = v.InferOutput<typeof tracking>;
+export type Wake = v.InferOutput<typeof wake>;
 export type Fleet = v.InferOutput<typeof fleet>;
 export type Box = v.InferOutput<typeof box>;
 export type Venue = v.InferOutput<typeof venue>;
