@@ -1,6 +1,15 @@
 import type { Samples } from "../core/decode/index.ts";
 import type { RoughCut, RoughCutOptions } from "../core/draft/index.ts";
-import type { Leg, LegProblem, Plan, ProofCache, ShowCheck, ShowFlight } from "../core/flight/index.ts";
+import type {
+	FoundRemedy,
+	Leg,
+	LegProblem,
+	Plan,
+	ProofCache,
+	RemedySearch,
+	ShowCheck,
+	ShowFlight,
+} from "../core/flight/index.ts";
 import type { HandoffOptions } from "../core/handoff/index.ts";
 import type { Flash } from "../core/light/index.ts";
 import type { Analysis } from "../core/music/index.ts";
@@ -168,6 +177,22 @@ function samePlan(a: Plan, b: Plan): boolean {
 	);
 }
 
+export interface RemediesAsk {
+	readonly show: Show;
+	readonly slots: ReadonlyMap<string, FleetSlots>;
+	readonly flight: ShowFlight;
+	readonly check: ShowCheck;
+	/** The transition's cue. */
+	readonly id: string;
+	readonly search: RemedySearch;
+}
+
+/** One way of looking for remedies of a transition that doesn't fly: each planned and proven before it is offered. */
+async function remedies(ask: RemediesAsk): Promise<FoundRemedy[]> {
+	const { searchRemedies } = await import("../core/flight/index.ts");
+	return searchRemedies(ask.show, ask.slots, ask.flight, ask.check, ask.id, ask.search);
+}
+
 export interface DraftAsk {
 	readonly analysis: Analysis;
 	readonly soundtrack: Soundtrack;
@@ -237,7 +262,7 @@ async function readShape(ask: { readonly name: string; readonly text: string; re
 	return isSvg ? { shape: readSvg(ask.text, ask.name, { count: ask.count }) } : readPointsCsv(ask.text, ask.name);
 }
 
-export const jobs = { analyse, lay, plan, assemble, check, draft, handoff, read, write, readShape };
+export const jobs = { analyse, lay, plan, assemble, check, remedies, draft, handoff, read, write, readShape };
 
 export type JobKind = keyof typeof jobs;
 export type JobAsk<K extends JobKind> = Parameters<(typeof jobs)[K]>[0];

@@ -6,7 +6,7 @@ import type { Plan } from "../plan.ts";
 import { planLeg } from "../plan-leg.ts";
 import { provePlanOnce } from "../proof/prove-plan.ts";
 import { withKey } from "../show/leg-problems.ts";
-import type { Remedy } from "./remedy.ts";
+import { bestFirst, type Remedy } from "./remedy.ts";
 import { inHand, sayBeats } from "./say-cost.ts";
 
 /**
@@ -33,7 +33,7 @@ export function findRemedies(
 		];
 		// Where the time is there, it is there: both ends need not be moved.
 		const one = remedies.slice(0, 3).filter((remedy) => remedy !== null);
-		found.set(check.id, one.length > 0 ? one : remedies.filter((remedy) => remedy !== null));
+		found.set(check.id, bestFirst(one.length > 0 ? one : remedies.filter((remedy) => remedy !== null)));
 	});
 	return found;
 }

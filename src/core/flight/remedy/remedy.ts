@@ -87,3 +87,8 @@ function applyStep(draft: DraftShow, step: RemedyStep): void {
 			setOpening(draft, step.id);
 	}
 }
+
+/** Those that cost the audience least first. */
+export function bestFirst(remedies: readonly Remedy[]): Remedy[] {
+	return [...remedies].sort((a, b) => a.loss - b.loss);
+}

@@ -25,6 +25,7 @@ export {
 } from "./document-edits.ts";
 export { addFormation, changeFormation, copyFormation, type NewFormation, removeFormation } from "./formation-edits.ts";
 export { doubleBeats, halveBeats, moveBeat, setGrid, setMetre, shiftBars, shiftBeats } from "./grid-edits.ts";
+export { newId } from "./new-id.ts";
 export {
 	joinSections,
 	moveSectionStart,

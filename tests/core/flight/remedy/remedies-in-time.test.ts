@@ -1,7 +1,7 @@
 import { describe, expect, it } from "vitest";
-import { applyRemedy, flyShow, type Remedy } from "../../../src/core/flight/index.ts";
-import { fleetSlotsOf, takeoffSlots } from "../../../src/core/formation/index.ts";
-import { applyEdit, changeCue, readShow, type Show } from "../../../src/core/show/index.ts";
+import { applyRemedy, flyShow, type Remedy } from "../../../../src/core/flight/index.ts";
+import { fleetSlotsOf, takeoffSlots } from "../../../../src/core/formation/index.ts";
+import { applyEdit, changeCue, readShow, type Show } from "../../../../src/core/show/index.ts";
 
 /** 16 drones, three discs 40 m apart in turn; beats every half second. */
 function showOf(cues: object[]): Show {

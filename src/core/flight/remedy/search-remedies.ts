@@ -1,0 +1,37 @@
+import type { FleetSlots, Show } from "../../show/index.ts";
+import type { ShowCheck } from "../check.ts";
+import type { ShowFlight } from "../show-flight.ts";
+import { goByWay } from "./by-way.ts";
+import { type Found, type Reshaping, reshape } from "./reshape.ts";
+import { trialBase } from "./trial.ts";
+
+/** The ways in space in which remedies are looked for, each a piece of work of its own. */
+export const REMEDY_SEARCHES = ["shrink", "nearer", "turn", "spread", "way"] as const;
+export type RemedySearch = (typeof REMEDY_SEARCHES)[number];
+
+/**
+ * Looks for remedies of one transition that doesn't fly, in one way. Every remedy found has been applied to the show,
+ * and every leg that it touches planned and proven: it makes the transition fly, and nothing that flew stops flying.
+ * Remedies in time alone are part of the check itself.
+ * @param flight of the show, as it was checked
+ * @param id of the transition's cue
+ * @returns none where the transition flies, or where nothing of the kind helps
+ */
+export function searchRemedies(
+	show: Show,
+	slots: ReadonlyMap<string, FleetSlots>,
+	flight: ShowFlight,
+	check: ShowCheck,
+	id: string,
+	search: RemedySearch,
+): Found[] {
+	const transition = check.transitions.find((one) => one.id === id);
+	if (transition === undefined || transition.verdicts.includes("flies")) return [];
+	const base = trialBase(show, slots, flight, failingLegs(check));
+	return search === "way" ? goByWay(base, transition) : reshape(base, transition, search satisfies Reshaping);
+}
+
+export function failingLegs({ launch, landing, transitions }: ShowCheck): Set<string> {
+	const legs = [launch, ...transitions, landing];
+	return new Set(legs.flatMap((leg) => (leg === null || leg.verdicts.includes("flies") ? [] : [leg.id])));
+}
