@@ -1,7 +1,10 @@
 import { type Assignment, assign } from "./assign/assign.ts";
-import { straightTime } from "./law/straight-time.ts";
+import { straightLaw } from "./law/fleet-law.ts";
+import { sCurveTime, straightTime } from "./law/straight-time.ts";
+import { lawDuration } from "./law/time-law.ts";
 import type { LegProblem } from "./leg-problem.ts";
 import { scaledMillimetres } from "./measure.ts";
+import { straightPaths } from "./paths/polynomial-paths.ts";
 
 /** An assignment that no drone pays for with a flight much longer than the longest one must be. */
 export interface Candidate {
@@ -10,6 +13,8 @@ export interface Candidate {
 	readonly cap: number | null;
 	/** Seconds: its longest straight flight. */
 	readonly longest: number;
+	/** Seconds: all its flights straight on one law. */
+	readonly together: number;
 }
 
 export interface Choice {
@@ -45,7 +50,14 @@ export function chooseAssignments(problem: LegProblem): Choice {
 		for (let i = 0; i < count; i++) longest = Math.max(longest, time(i, target[i]));
 		return longest;
 	};
-	const free: Candidate = { assignment: solved, cap: null, longest: longestOf(solved.target) };
+	const togetherOf = (target: Int32Array): number =>
+		lawDuration(straightLaw(straightPaths(from, to, target), count, limits, problem.timeLaw ?? "s-curve"));
+	const free: Candidate = {
+		assignment: solved,
+		cap: null,
+		longest: longestOf(solved.target),
+		together: togetherOf(solved.target),
+	};
 	let low = nearestFlights(count, time, free.longest);
 	if (free.longest <= ENOUGH * low || count < 2) return { candidates: [free], bound: Math.min(low, free.longest) };
 	const within = (limit: number): Assignment | null =>
@@ -65,11 +77,76 @@ export function chooseAssignments(problem: LegProblem): Choice {
 			const limit = cap * low;
 			if (limit >= free.longest) break;
 			const found = within(limit);
-			if (found !== null) candidates.push({ assignment: found, cap, longest: longestOf(found.target) });
+			if (found !== null) candidates.push({ assignment: found, cap, longest: longestOf(found.target), together: togetherOf(found.target) });
 		}
 	}
-	candidates.sort((a, b) => a.longest - b.longest);
+	if (process.env.JOINT !== "0" && Math.min(...candidates.map((c) => c.together)) > 1.03 * low) {
+		const shared = withinSharedLaw(problem, low, (allowed) => assign(scaledFrom, scaledTo, allowed, solved));
+		if (shared !== null) candidates.push({ assignment: shared, cap: 1, longest: longestOf(shared.target), together: togetherOf(shared.target) });
+	}
+	candidates.sort((a, b) => a.together - b.together);
 	return { candidates, bound: low };
+}
+
+/** Shares over the bound that a shared law is tried at, and how many shapes of it. */
+const SHARED = [1.015, 1.03, 1.05, 1.09];
+const SHAPES = 9;
+
+/**
+ * On one law a climb that needs speed and a long flight that needs acceleration hold each other up, though each alone is
+ * within the cap. So flights are held to what one law of a given duration allows: all those that it is fast enough for and
+ * not too brisk for; from a law that cruises most of the way to one that never does.
+ */
+function withinSharedLaw(
+	{ from, to, limits }: LegProblem,
+	bound: number,
+	solve: (allowed: (i: number, j: number) => boolean) => Assignment | null,
+): Assignment | null {
+	const count = from.length / 3;
+	for (const share of SHARED) {
+		const time = share * bound;
+		for (let k = 0; k < SHAPES; k++) {
+			// Top rate of s: 1/T would never stop to accelerate, 2/T never cruise.
+			const speed = (1.1 + (0.85 * k) / (SHAPES - 1)) / time;
+			let [low, high] = [1e-6, 1e6];
+			const jolt = limits.jerk / limits.acceleration;
+			for (let step = 0; step < 60; step++) {
+				const middle = Math.sqrt(low * high);
+				if (sCurveTime(1, { speed, acceleration: middle, jerk: middle * jolt }) > time) low = middle;
+				else high = middle;
+			}
+			if (high > 1e5) continue;
+			const far = limits.acceleration / high;
+			const allowed = (i: number, j: number): boolean => {
+				const [x, y, z] = [to[3 * j] - from[3 * i], to[3 * j + 1] - from[3 * i + 1], to[3 * j + 2] - from[3 * i + 2]];
+				const level = x * x + y * y;
+				return (
+					level + z * z <= far * far &&
+					level * speed * speed <= limits.horizontal * limits.horizontal &&
+					z * speed <= limits.climb &&
+					-z * speed <= limits.descent
+				);
+			};
+			if (!everyoneHasOne(count, allowed)) continue;
+			const found = solve(allowed);
+			if (found !== null) return found;
+		}
+	}
+	return null;
+}
+
+function everyoneHasOne(count: number, allowed: (i: number, j: number) => boolean): boolean {
+	const columns = new Uint8Array(count);
+	for (let i = 0; i < count; i++) {
+		let any = false;
+		for (let j = 0; j < count; j++) {
+			if (!allowed(i, j)) continue;
+			any = true;
+			columns[j] = 1;
+		}
+		if (!any) return false;
+	}
+	return columns.every((column) => column === 1);
 }
 
 /** Seconds: some drone must fly at least this long, whoever goes where. */
