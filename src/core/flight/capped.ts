@@ -51,14 +51,14 @@ export function chooseAssignments(problem: LegProblem): Choice {
 		return longest;
 	};
 	const togetherOf = (target: Int32Array): number =>
-		lawDuration(straightLaw(straightPaths(from, to, target), count, limits, problem.timeLaw ?? "s-curve"));
+		lawDuration(straightLaw(straightPaths(from, to, target), count, limits, problem.timeLaw));
 	const free: Candidate = {
 		assignment: solved,
 		cap: null,
 		longest: longestOf(solved.target),
 		together: togetherOf(solved.target),
 	};
-	let low = nearestFlights(count, time, free.longest);
+	let low = nearestFlights(solved.target, time);
 	if (free.longest <= ENOUGH * low || count < 2) return { candidates: [free], bound: Math.min(low, free.longest) };
 	const within = (limit: number): Assignment | null =>
 		assign(scaledFrom, scaledTo, (i, j) => time(i, j) <= limit + 1e-9, solved);
@@ -77,12 +77,24 @@ export function chooseAssignments(problem: LegProblem): Choice {
 			const limit = cap * low;
 			if (limit >= free.longest) break;
 			const found = within(limit);
-			if (found !== null) candidates.push({ assignment: found, cap, longest: longestOf(found.target), together: togetherOf(found.target) });
+			if (found !== null)
+				candidates.push({
+					assignment: found,
+					cap,
+					longest: longestOf(found.target),
+					together: togetherOf(found.target),
+				});
 		}
 	}
-	if (process.env.JOINT !== "0" && Math.min(...candidates.map((c) => c.together)) > 1.03 * low) {
+	if (Math.min(...candidates.map((c) => c.together)) > 1.03 * low) {
 		const shared = withinSharedLaw(problem, low, (allowed) => assign(scaledFrom, scaledTo, allowed, solved));
-		if (shared !== null) candidates.push({ assignment: shared, cap: 1, longest: longestOf(shared.target), together: togetherOf(shared.target) });
+		if (shared !== null)
+			candidates.push({
+				assignment: shared,
+				cap: 1,
+				longest: longestOf(shared.target),
+				together: togetherOf(shared.target),
+			});
 	}
 	candidates.sort((a, b) => a.together - b.together);
 	return { candidates, bound: low };
@@ -149,19 +161,21 @@ function everyoneHasOne(count: number, allowed: (i: number, j: number) => boolea
 	return columns.every((column) => column === 1);
 }
 
-/** Seconds: some drone must fly at least this long, whoever goes where. */
-function nearestFlights(count: number, time: (i: number, j: number) => number, enough: number): number {
-	const columns = new Float64Array(count).fill(Number.POSITIVE_INFINITY);
+/** Seconds: some drone must fly at least this long, whoever goes where; no more than the longest flight of `target`. */
+function nearestFlights(target: Int32Array, time: (i: number, j: number) => number): number {
+	const count = target.length;
+	const own = Float64Array.from({ length: count }, (_, i) => time(i, target[i]));
+	const order = Int32Array.from({ length: count }, (_, i) => i).sort((p, q) => own[q] - own[p] || p - q);
 	let bound = 0;
-	for (let i = 0; i < count; i++) {
-		let row = Number.POSITIVE_INFINITY;
-		for (let j = 0; j < count; j++) {
-			const seconds = time(i, j);
-			if (seconds < row) row = seconds;
-			if (seconds < columns[j]) columns[j] = seconds;
-		}
+	// Only a row (or column) none of whose flights is within the bound raises it: longest first, few need a look at all.
+	for (const i of order) {
+		if (own[i] <= bound) break;
+		let row = own[i];
+		for (let j = 0; j < count && row > bound; j++) row = Math.min(row, time(i, j));
 		bound = Math.max(bound, row);
+		let column = own[i];
+		for (let k = 0; k < count && column > bound; k++) column = Math.min(column, time(k, target[i]));
+		bound = Math.max(bound, column);
 	}
-	for (const column of columns) bound = Math.max(bound, column);
-	return Math.min(bound, enough);
+	return bound;
 }

@@ -1,12 +1,12 @@
-import { GAP_TOLERANCE, SPACING_HAIR } from "../units/index.ts";
+import { GAP_TOLERANCE } from "../units/index.ts";
 import { type Candidate, chooseAssignments } from "./capped.ts";
 import { lawForPaths } from "./law/fleet-law.ts";
 import { straightTime } from "./law/straight-time.ts";
 import { dilate, lawDuration } from "./law/time-law.ts";
 import { verticalLaw } from "./law/vertical-law.ts";
 import type { LegProblem, PlanProgress } from "./leg-problem.ts";
+import { partPairs } from "./parting/part-pairs.ts";
 import { guaranteedPaths } from "./paths/guaranteed.ts";
-import { partPaths } from "./paths/part-paths.ts";
 import { type Paths, straightPaths } from "./paths/polynomial-paths.ts";
 import type { Plan, TimeLaw } from "./plan.ts";
 import { peaksOfFlight } from "./proof/peaks.ts";
@@ -15,14 +15,17 @@ import { smallestSeparation } from "./proof/separation.ts";
 import { findBreach } from "./proof/venue.ts";
 
 /** Rises whenever the same problem would give another plan. */
-export const PLANNER_VERSION = 2;
+export const PLANNER_VERSION = 3;
 
-/** Swells of the whole fleet with which the parting of near pairs is begun anew when it doesn't come to an end. */
-const SWELLS = [0, 0.06, 0.15];
-/** Rounds of parting: fewer the more drones, since each looks at every pair in sight. */
-const roundsFor = (count: number): number => (count <= 400 ? 160 : count <= 1500 ? 90 : 45);
 /** A plan this near to the straight-line bound is not bettered by further tries. */
-const ENOUGH = 1.04;
+const ENOUGH = 1.02;
+/** Nor is one for which another assignment, even straight, would save less than this share. */
+const WORTH = 1.1;
+/** Assignments that are tried, best first. */
+const TRIES = 3;
+/** Times the straight flights' own duration at which parting is given up. */
+const LATEST = 3;
+const LOOKS = 300;
 
 /** What a candidate came to. */
 interface Outcome {
@@ -39,14 +42,16 @@ export function planLeg(problem: LegProblem, onProgress?: PlanProgress): Plan {
 	if (problem.target !== null) return planForced(problem, problem.target);
 	onProgress?.(0, "assigning");
 	const { candidates, bound } = chooseAssignments(problem);
-	let best: Outcome | null = null;
-	candidates.forEach((candidate, k) => {
-		if (best?.clear && lawDuration(best.law) <= Math.max(ENOUGH * bound, candidate.longest)) return;
-		onProgress?.(0.3 + (0.6 * k) / candidates.length, "parting near pairs");
-		best = better(best, outcomeOf(problem, candidate));
-	});
+	let best: Outcome | null = null as Outcome | null;
+	for (let k = 0; k < Math.min(TRIES, candidates.length); k++) {
+		const known: number = best?.clear ? lawDuration(best.law) : Infinity;
+		if (known <= Math.max(ENOUGH * bound, WORTH * candidates[k].together)) break;
+		onProgress?.(0.3 + (0.6 * k) / TRIES, "parting near pairs");
+		const found = partedOutcome(problem, candidates[k], bound);
+		if (found !== null) best = better(best, found);
+	}
 	const free = candidates.find(({ cap }) => cap === null);
-	if (free && !(best as Outcome | null)?.clear) best = better(best, guaranteedOutcome(problem, free));
+	if (free && !best?.clear) best = better(best, guaranteedOutcome(problem, free));
 	const { candidate, paths, law, method } = best as unknown as Outcome;
 	const { assignment, cap } = candidate;
 	onProgress?.(1, "planned");
@@ -90,33 +95,26 @@ function planForced(problem: LegProblem, target: Int32Array): Plan {
 	};
 }
 
-/** Straight if that keeps spacing; else bent until it does. */
-function outcomeOf(problem: LegProblem, candidate: Candidate): Outcome {
-	const { from, to, limits } = problem;
+/** Straight if that keeps spacing; else bent until it does; null where that doesn't come to an end. */
+function partedOutcome(problem: LegProblem, candidate: Candidate, bound: number): Outcome | null {
 	const { target } = candidate.assignment;
+	const { spacing, downwash } = problem.limits;
 	const count = target.length;
-	const straight = straightPaths(from, to, target);
-	if (keepsSpacing(straight, problem)) return outcome(problem, candidate, straight, "straight");
-	const longest = Math.max(1e-9, candidate.longest);
-	const spare = new Float64Array(count);
-	for (let i = 0; i < count; i++) {
-		const [a, b] = [3 * i, 3 * target[i]];
-		const own = straightTime(to[b] - from[a], to[b + 1] - from[a + 1], to[b + 2] - from[a + 2], limits);
-		spare[i] = Math.max(0, 1 - own / longest);
-	}
-	for (const swell of SWELLS) {
-		const bent = partPaths(from, to, target, {
-			gap: limits.spacing + SPACING_HAIR / 4,
-			downwash: limits.downwash,
-			swell,
-			spare,
-			rounds: roundsFor(count),
-		});
-		if (bent === null || !keepsSpacing(bent, problem)) continue;
-		const found = outcome(problem, candidate, bent, "bent");
-		if (found.clear) return found;
-	}
-	return { candidate, paths: straight, law: lawWithin(straight, problem), method: "straight", clear: false };
+	const ends = [problem.from, problem.to].map((points) => {
+		const still = straightPaths(points, points, Int32Array.from(target.keys()));
+		return smallestSeparation(still.coefficients, 1, count, downwash).distance;
+	});
+	// A formation may itself stand a rounding under the spacing: no bend can give more than the ends have.
+	const gap = Math.min(spacing - GAP_TOLERANCE / 10, ...ends.map((end) => end - GAP_TOLERANCE / 20));
+	const parted = partPairs(problem, target, {
+		gap,
+		least: Math.max(spacing - 0.95 * GAP_TOLERANCE, gap - GAP_TOLERANCE / 2),
+		bound,
+		enough: ENOUGH * bound,
+		latest: LATEST * Math.max(bound, candidate.together),
+		looks: LOOKS,
+	});
+	return parted && outcome(problem, candidate, parted.paths, parted.paths.degree === 1 ? "straight" : "bent");
 }
 
 /** Paths that part every pair whatever the formations; they hold for an uncapped optimal assignment alone. */

@@ -38,8 +38,8 @@ function straightRates(paths: Paths, count: number, limits: Limits): RateLimits 
 }
 
 /** Instants on each piece of the law at which a curved path is looked at; the proof gives exact peaks afterwards. */
-const INSTANTS = 7;
-const ROUNDS = 6;
+const INSTANTS = 5;
+const ROUNDS = 5;
 
 /**
  * A law for any paths: its shape is adjusted until speed, acceleration and jerk of what is flown are each about at their

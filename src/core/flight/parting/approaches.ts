@@ -15,6 +15,8 @@ export interface Approaches {
 export interface Lookout {
 	/** All approaches under `within`, from scratch. */
 	look(within: number): Approaches;
+	/** From now on looks at twice as many instants. @returns false where it can't look more closely */
+	sharpen(): boolean;
 	/** The same approaches after the bends have changed a little. */
 	follow(): void;
 }
@@ -23,6 +25,7 @@ export interface Lookout {
 const SIGHT = 1.6;
 const FEWEST_INSTANTS = 16;
 const MOST_INSTANTS = 96;
+const SHARPEST = 256;
 /** Steps of Newton's method towards the nearest point. */
 const STEPS = 3;
 
@@ -34,8 +37,8 @@ export function createLookout(bends: Bends, gap: number): Lookout {
 		far = Math.max(far, Math.hypot(bends.way[3 * i], bends.way[3 * i + 1], bends.way[3 * i + 2]));
 	}
 	// Two drones that close in by r between instants are seen nearer than √(gap² + r²/4) at one of them.
-	const instants = Math.min(MOST_INSTANTS, Math.max(FEWEST_INSTANTS, Math.ceil(far / (1.5 * gap))));
-	const points = Array.from({ length: instants + 1 }, () => new Float64Array(3 * count));
+	let instants = Math.min(MOST_INSTANTS, Math.max(FEWEST_INSTANTS, Math.ceil(far / (1.5 * gap))));
+	let points = rows(instants + 1, 3 * count);
 	const cells = createCells(count);
 	const found: Approaches = {
 		count: 0,
@@ -49,7 +52,8 @@ export function createLookout(bends: Bends, gap: number): Lookout {
 
 	const take = (i: number, j: number, from: number): void => {
 		descend(bends, i, j, from, 1 / instants, nearest);
-		if (nearest.distance >= bound) return;
+		// An end itself can't be bent.
+		if (nearest.distance >= bound || nearest.at <= 0 || nearest.at >= 1) return;
 		if (found.count === found.first.length) grow(found);
 		const k = found.count++;
 		found.first[k] = Math.min(i, j);
@@ -70,9 +74,9 @@ export function createLookout(bends: Bends, gap: number): Lookout {
 				const now = squareOf(here, i, j);
 				// At an end: only where they set out towards each other.
 				if (k === 0) {
-					if (closing(bends, i, j, 0) < 0) take(i, j, 0);
+					take(i, j, closing(bends, i, j, 0) < 0 ? 0 : 0.5 / instants);
 				} else if (k === instants) {
-					if (closing(bends, i, j, 1) > 0) take(i, j, 1);
+					take(i, j, closing(bends, i, j, 1) > 0 ? 1 : 1 - 0.5 / instants);
 				} else if (now <= squareOf(before, i, j) && now < squareOf(after, i, j)) take(i, j, k / instants);
 			});
 		}
@@ -86,8 +90,17 @@ export function createLookout(bends: Bends, gap: number): Lookout {
 			found.distance[k] = nearest.distance;
 		}
 	}
-	return { look, follow };
+	function sharpen(): boolean {
+		if (instants >= SHARPEST) return false;
+		instants *= 2;
+		points = rows(instants + 1, 3 * count);
+		return true;
+	}
+	return { look, sharpen, follow };
 }
+
+const rows = (many: number, length: number): Float64Array[] =>
+	Array.from({ length: many }, () => new Float64Array(length));
 
 function squareOf(points: Float64Array, i: number, j: number): number {
 	const x = points[3 * j] - points[3 * i];

@@ -7,8 +7,9 @@
 import { lawForPaths } from "../law/fleet-law.ts";
 import { dilate, lawDuration } from "../law/time-law.ts";
 import type { LegProblem } from "../leg-problem.ts";
-import type { Paths } from "../paths/polynomial-paths.ts";
+import { type Paths, straightPaths } from "../paths/polynomial-paths.ts";
 import type { TimeLaw } from "../plan.ts";
+import { smallestSeparation } from "../proof/separation.ts";
 import { type Approaches, createLookout } from "./approaches.ts";
 import { type Bends, bentPaths, straightBends } from "./bends.ts";
 import { createPace, type Pace } from "./pace.ts";
@@ -30,8 +31,6 @@ export interface PartingOptions {
 export interface Parted {
 	readonly paths: Paths;
 	readonly law: TimeLaw;
-	/** Nothing had to be bent. */
-	readonly straight: boolean;
 }
 
 /** Projections of every approach between two looks. */
@@ -48,7 +47,9 @@ const PROGRESS = 0.3;
 const MORE_TIME = 1.03;
 /** How the time is tightened once all is parted, and looks that this may take each time. */
 const TIGHTEN = 0.985;
-const POLISH = 20;
+const POLISH = 16;
+/** A tightening that gains less than this is the last. */
+const WORTH = 0.996;
 
 /** @param target end slot of each row; @returns the quickest paths found that keep the gap, or null */
 export function partPairs(problem: LegProblem, target: Int32Array, options: PartingOptions): Parted | null {
@@ -61,7 +62,7 @@ export function partPairs(problem: LegProblem, target: Int32Array, options: Part
 	const room = createRoom(bends, problem.volume, problem.blocked, limits.downwash);
 	const mobility = new Float64Array(count);
 	let law = lawForPaths(pathsNow(), count, limits, timeLaw);
-	if (lawDuration(law) === 0) return { paths: pathsNow(), law, straight: true };
+	if (lawDuration(law) === 0) return { paths: straightPaths(from, to, target), law };
 	let pace = createPace(law, limits, limits.downwash);
 	let best: Parted | null = null;
 	let duration = Math.max(options.bound * 1.01, 0.98 * lawDuration(law));
@@ -70,25 +71,28 @@ export function partPairs(problem: LegProblem, target: Int32Array, options: Part
 	let lacked = Infinity;
 	for (let round = 0; round < options.looks; round++) {
 		const outside = room.keep(bends);
-		let lacking = round % SEARCH === 0 && round > 0 ? missing(lookout.look(MIND * gap), gap) : missing(near, gap);
-		if (round % SEARCH !== 0 && worst(near) >= options.least && outside === 0) {
-			near = lookout.look(MIND * gap);
-			lacking = missing(near, gap);
-		}
+		if (round % SEARCH === 0 || (outside === 0 && smallest(near) >= options.least)) near = lookout.look(MIND * gap);
 		since++;
-		if (worst(near) >= options.least && outside === 0) {
+		if (outside === 0 && smallest(near) >= options.least) {
+			const paths = round === 0 ? straightPaths(from, to, target) : pathsNow();
+			if (smallestSeparation(paths.coefficients, paths.degree, count, limits.downwash).distance < options.least) {
+				// Between two instants of the lookout something slipped past it.
+				if (!lookout.sharpen()) break;
+				continue;
+			}
 			const kept = dilate(law, hasteOf(pace, bends, lawDuration(law)));
-			const paths = pathsNow();
 			const fitted = lawForPaths(paths, count, limits, timeLaw);
 			law = lawDuration(fitted) < lawDuration(kept) ? fitted : kept;
-			if (best === null || lawDuration(law) < lawDuration(best.law)) best = { paths, law, straight: round === 0 };
-			if (lawDuration(best.law) <= options.enough) break;
+			const before: number = best === null ? Infinity : lawDuration(best.law);
+			if (lawDuration(law) < before) best = { paths, law };
+			if (best === null || lawDuration(best.law) <= options.enough || lawDuration(law) > WORTH * before) break;
 			pace = createPace(law, limits, limits.downwash);
 			duration = Math.max(options.bound, lawDuration(best.law) * TIGHTEN);
 			since = 0;
 		} else if (best !== null) {
 			if (since > POLISH) break;
 		} else if (since % PATIENCE === 0) {
+			const lacking = missing(near, gap);
 			if (lacking > (1 - PROGRESS) * lacked) {
 				duration *= MORE_TIME;
 				if (duration > options.latest) break;
@@ -104,7 +108,7 @@ export function partPairs(problem: LegProblem, target: Int32Array, options: Part
 	return best;
 }
 
-function worst({ count, distance }: Approaches): number {
+function smallest({ count, distance }: Approaches): number {
 	let least = Infinity;
 	for (let k = 0; k < count; k++) if (distance[k] < least) least = distance[k];
 	return least;

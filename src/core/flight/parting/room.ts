@@ -106,9 +106,7 @@ function shift({ leave, reach }: Bends, at: number, s: number, by: number): void
 function pushOut(bent: Bends, at: number, s: number, box: Box, side: number): number {
 	const here = placeOf(bent, at, s);
 	const axis = side >> 1;
-	return side % 2 === 0
-		? Math.min(0, box.min[axis] - CLEAR - here)
-		: Math.max(0, box.max[axis] + CLEAR - here);
+	return side % 2 === 0 ? Math.min(0, box.min[axis] - CLEAR - here) : Math.max(0, box.max[axis] + CLEAR - here);
 }
 
 function isIn(bent: Bends, i: number, s: number, box: Box): boolean {

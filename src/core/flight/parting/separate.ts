@@ -5,7 +5,7 @@ import { type Bends, leaveWeight, reachWeight } from "./bends.ts";
 /** Over-relaxation of each projection. */
 const RELAX = 1.3;
 /** Share of the way at either end on which touching drones are parted by their slopes. */
-const AT_END = 0.15;
+const AT_END = 0.05;
 /** Least of f² + g² that is divided by: nearer to an end a push moves next to nothing. */
 const LEAST_WEIGHT = 0.0016;
 
