@@ -1,10 +1,12 @@
 import { type Assignment, assign } from "./assign/assign.ts";
+import type { Allowed } from "./assign/sparse-arcs.ts";
 import { straightLaw } from "./law/fleet-law.ts";
-import { sCurveTime, straightTime } from "./law/straight-time.ts";
+import { straightTime } from "./law/straight-time.ts";
 import { lawDuration } from "./law/time-law.ts";
 import type { LegProblem } from "./leg-problem.ts";
 import { scaledMillimetres } from "./measure.ts";
 import { straightPaths } from "./paths/polynomial-paths.ts";
+import { withinSharedLaw } from "./shared-law.ts";
 
 /** An assignment that no drone pays for with a flight much longer than the longest one must be. */
 export interface Candidate {
@@ -28,8 +30,13 @@ export interface Choice {
 const CAPS = [1.03, 1.15, 1.35];
 /** The uncapped answer is good enough below this share over the bound. */
 const ENOUGH = 1.02;
+/** On one law the flights of the best cap may take this much longer than the bound before a shared law is sought. */
+const TOGETHER = 1.03;
 const HALVINGS = 6;
-/** Above this many drones the bound is the larger of the nearest flights alone: bisecting would take too long. */
+/**
+ * Above this many drones the bound is the larger of the nearest flights alone, the first cap that can be kept is the only
+ * one tried, and no shared law is sought: each is another assignment, and would take too long.
+ */
 const MANY = 2500;
 
 /**
@@ -45,120 +52,40 @@ export function chooseAssignments(problem: LegProblem): Choice {
 	if (solved === null) throw new Error("an assignment without forbidden pairs always exists");
 	const time = (i: number, j: number): number =>
 		straightTime(to[3 * j] - from[3 * i], to[3 * j + 1] - from[3 * i + 1], to[3 * j + 2] - from[3 * i + 2], limits);
-	const longestOf = (target: Int32Array): number => {
+	const candidate = (assignment: Assignment, cap: number | null): Candidate => {
 		let longest = 0;
-		for (let i = 0; i < count; i++) longest = Math.max(longest, time(i, target[i]));
-		return longest;
+		for (let i = 0; i < count; i++) longest = Math.max(longest, time(i, assignment.target[i]));
+		const straight = straightPaths(from, to, assignment.target);
+		return { assignment, cap, longest, together: lawDuration(straightLaw(straight, count, limits, problem.timeLaw)) };
 	};
-	const togetherOf = (target: Int32Array): number =>
-		lawDuration(straightLaw(straightPaths(from, to, target), count, limits, problem.timeLaw));
-	const free: Candidate = {
-		assignment: solved,
-		cap: null,
-		longest: longestOf(solved.target),
-		together: togetherOf(solved.target),
-	};
+	const free = candidate(solved, null);
 	let low = nearestFlights(solved.target, time);
 	if (free.longest <= ENOUGH * low || count < 2) return { candidates: [free], bound: Math.min(low, free.longest) };
-	const within = (limit: number): Assignment | null =>
-		assign(scaledFrom, scaledTo, (i, j) => time(i, j) <= limit + 1e-9, solved);
+	const within = (allowed: Allowed): Assignment | null => assign(scaledFrom, scaledTo, allowed, solved);
+	const noLongerThan = (limit: number): Assignment | null => within((i, j) => time(i, j) <= limit + 1e-9);
 	if (count <= MANY) {
 		let high = free.longest;
 		for (let k = 0; k < HALVINGS && high > 1.004 * low; k++) {
 			const middle = Math.sqrt(low * high);
-			const found = within(middle);
+			const found = noLongerThan(middle);
 			if (found === null) low = middle;
-			else high = longestOf(found.target);
+			else high = candidate(found, null).longest;
 		}
 	}
 	const candidates: Candidate[] = [free];
-	if (free.longest > ENOUGH * low) {
-		for (const cap of CAPS) {
-			const limit = cap * low;
-			if (limit >= free.longest) break;
-			const found = within(limit);
-			if (found !== null)
-				candidates.push({
-					assignment: found,
-					cap,
-					longest: longestOf(found.target),
-					together: togetherOf(found.target),
-				});
-		}
+	for (const cap of CAPS) {
+		if (cap * low >= free.longest) break;
+		const found = noLongerThan(cap * low);
+		if (found === null) continue;
+		candidates.push(candidate(found, cap));
+		if (count > MANY) break;
 	}
-	if (Math.min(...candidates.map((c) => c.together)) > 1.03 * low) {
-		const shared = withinSharedLaw(problem, low, (allowed) => assign(scaledFrom, scaledTo, allowed, solved));
-		if (shared !== null)
-			candidates.push({
-				assignment: shared,
-				cap: 1,
-				longest: longestOf(shared.target),
-				together: togetherOf(shared.target),
-			});
+	if (count <= MANY && Math.min(...candidates.map(({ together }) => together)) > TOGETHER * low) {
+		const found = withinSharedLaw(problem, low, within);
+		if (found !== null) candidates.push(candidate(found.assignment, found.share));
 	}
 	candidates.sort((a, b) => a.together - b.together);
 	return { candidates, bound: low };
-}
-
-/** Shares over the bound that a shared law is tried at, and how many shapes of it. */
-const SHARED = [1.015, 1.03, 1.05, 1.09];
-const SHAPES = 9;
-
-/**
- * On one law a climb that needs speed and a long flight that needs acceleration hold each other up, though each alone is
- * within the cap. So flights are held to what one law of a given duration allows: all those that it is fast enough for and
- * not too brisk for; from a law that cruises most of the way to one that never does.
- */
-function withinSharedLaw(
-	{ from, to, limits }: LegProblem,
-	bound: number,
-	solve: (allowed: (i: number, j: number) => boolean) => Assignment | null,
-): Assignment | null {
-	const count = from.length / 3;
-	for (const share of SHARED) {
-		const time = share * bound;
-		for (let k = 0; k < SHAPES; k++) {
-			// Top rate of s: 1/T would never stop to accelerate, 2/T never cruise.
-			const speed = (1.1 + (0.85 * k) / (SHAPES - 1)) / time;
-			let [low, high] = [1e-6, 1e6];
-			const jolt = limits.jerk / limits.acceleration;
-			for (let step = 0; step < 60; step++) {
-				const middle = Math.sqrt(low * high);
-				if (sCurveTime(1, { speed, acceleration: middle, jerk: middle * jolt }) > time) low = middle;
-				else high = middle;
-			}
-			if (high > 1e5) continue;
-			const far = limits.acceleration / high;
-			const allowed = (i: number, j: number): boolean => {
-				const [x, y, z] = [to[3 * j] - from[3 * i], to[3 * j + 1] - from[3 * i + 1], to[3 * j + 2] - from[3 * i + 2]];
-				const level = x * x + y * y;
-				return (
-					level + z * z <= far * far &&
-					level * speed * speed <= limits.horizontal * limits.horizontal &&
-					z * speed <= limits.climb &&
-					-z * speed <= limits.descent
-				);
-			};
-			if (!everyoneHasOne(count, allowed)) continue;
-			const found = solve(allowed);
-			if (found !== null) return found;
-		}
-	}
-	return null;
-}
-
-function everyoneHasOne(count: number, allowed: (i: number, j: number) => boolean): boolean {
-	const columns = new Uint8Array(count);
-	for (let i = 0; i < count; i++) {
-		let any = false;
-		for (let j = 0; j < count; j++) {
-			if (!allowed(i, j)) continue;
-			any = true;
-			columns[j] = 1;
-		}
-		if (!any) return false;
-	}
-	return columns.every((column) => column === 1);
 }
 
 /** Seconds: some drone must fly at least this long, whoever goes where; no more than the longest flight of `target`. */

@@ -105,10 +105,10 @@ function partedOutcome(problem: LegProblem, candidate: Candidate, bound: number)
 		return smallestSeparation(still.coefficients, 1, count, downwash).distance;
 	});
 	// A formation may itself stand a rounding under the spacing: no bend can give more than the ends have.
-	const gap = Math.min(spacing - GAP_TOLERANCE / 10, ...ends.map((end) => end - GAP_TOLERANCE / 20));
+	const gap = Math.min(spacing, ...ends.map((end) => end - GAP_TOLERANCE / 20));
 	const parted = partPairs(problem, target, {
 		gap,
-		least: Math.max(spacing - 0.95 * GAP_TOLERANCE, gap - GAP_TOLERANCE / 2),
+		least: Math.max(spacing - 0.95 * GAP_TOLERANCE, gap - 0.3 * GAP_TOLERANCE),
 		bound,
 		enough: ENOUGH * bound,
 		latest: LATEST * Math.max(bound, candidate.together),

@@ -5,7 +5,15 @@
  */
 import { augmentRow, createSearchRoom, freeRows, type Matching, reduceRows } from "./augment.ts";
 import { mortonOrder } from "./morton.ts";
-import { type Allowed, type Arcs, collectArcs, lowestArcs, type Sets, squaredDistance } from "./sparse-arcs.ts";
+import {
+	type Allowed,
+	type Arcs,
+	collectArcs,
+	firstColumn,
+	lowestArcs,
+	type Sets,
+	squaredDistance,
+} from "./sparse-arcs.ts";
 
 const ARCS_A_ROW = 14;
 const ARCS_A_COLUMN = 6;
@@ -162,7 +170,7 @@ function widen(
 	for (let k = -1; k < reached.length; k++) {
 		const row = k < 0 ? start : matching.rowOf[reached[k]];
 		const found: { value: number; column: number }[] = [];
-		for (let j = 0; j < sets.count; j++) {
+		for (let n = 0, j = firstColumn(row, sets.count); n < sets.count; n++, j = j + 1 < sets.count ? j + 1 : 0) {
 			if (inside[j] === 1) continue;
 			const value = squaredDistance(sets, row, j) - matching.v[j];
 			if (found.length === perRow && value >= found[perRow - 1].value) continue;
@@ -209,7 +217,7 @@ function priceAll(sets: Sets, matching: Matching, allowed: Allowed | undefined):
 		const az = 2 * from[3 * i + 2];
 		let worst = u[i] - (ax * ax + ay * ay + az * az) / 4;
 		let held = 0;
-		for (let j = 0; j < count; j++) {
+		for (let n = 0, j = firstColumn(i, count); n < count; n++, j = j + 1 < count ? j + 1 : 0) {
 			const value = offset[j] - ax * tx[j] - ay * ty[j] - az * tz[j];
 			if (value >= worst) continue;
 			if (allowed !== undefined && !allowed(i, j)) continue;

@@ -92,7 +92,7 @@ export function partPairs(problem: LegProblem, target: Int32Array, options: Part
 		} else if (best !== null) {
 			if (since > POLISH) break;
 		} else if (since % PATIENCE === 0) {
-			const lacking = missing(near, gap);
+			const lacking = missing(near, gap) + outside;
 			if (lacking > (1 - PROGRESS) * lacked) {
 				duration *= MORE_TIME;
 				if (duration > options.latest) break;

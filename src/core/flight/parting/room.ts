@@ -10,7 +10,7 @@ const HAIR = 0.02;
 const CLEAR = 0.15;
 
 export interface Room {
-	/** Moves what is outside. @returns how many drones were */
+	/** Moves what is outside. @returns by how many metres in all, in the measure of spacing */
 	keep(bends: Bends): number;
 }
 
@@ -29,7 +29,6 @@ export function createRoom(bends: Bends, volume: Box, blocked: readonly Box[], d
 	function keep(bent: Bends): number {
 		let moved = 0;
 		for (let i = 0; i < count; i++) {
-			let any = false;
 			for (let axis = 0; axis < 3; axis++) {
 				const at = 3 * i + axis;
 				if (bent.leave[at] === 0 && bent.reach[at] === 0) continue;
@@ -43,29 +42,31 @@ export function createRoom(bends: Bends, volume: Box, blocked: readonly Box[], d
 					const most = low > 0 ? Math.min(low, Math.min(...ends) - here) : Math.max(high, Math.max(...ends) - here);
 					if (low > 0 ? most <= 0 : most >= 0) continue;
 					shift(bent, at, k / WITHIN, most);
-					any = true;
+					moved += Math.abs(most);
 				}
 			}
-			for (let b = 0; b < boxes.length; b++) if (passBy(bent, i, b)) any = true;
-			if (any) moved++;
+			for (let b = 0; b < boxes.length; b++) moved += passBy(bent, i, b);
 		}
 		return moved;
 	}
 
-	function passBy(bent: Bends, i: number, b: number): boolean {
+	function passBy(bent: Bends, i: number, b: number): number {
 		const box = boxes[b];
-		if (misses(bent, i, box)) return false;
+		if (misses(bent, i, box)) return 0;
 		const met: number[] = [];
 		for (let k = 1; k < AROUND; k++) if (isIn(bent, i, k / AROUND, box)) met.push(k / AROUND);
-		if (met.length === 0) return false;
+		if (met.length === 0) return 0;
 		const known = i * boxes.length + b;
 		if (sides[known] < 0) sides[known] = nearestSide(bent, i, box, met);
 		const axis = sides[known] >> 1;
+		let moved = 0;
 		for (const s of met) {
 			const by = pushOut(bent, 3 * i + axis, s, box, sides[known]);
-			if (by !== 0) shift(bent, 3 * i + axis, s, by);
+			if (by === 0) continue;
+			shift(bent, 3 * i + axis, s, by);
+			moved += Math.abs(by);
 		}
-		return true;
+		return moved;
 	}
 
 	/** The side that asks for the least bend and keeps inside the flight volume. */
@@ -76,10 +77,14 @@ export function createRoom(bends: Bends, volume: Box, blocked: readonly Box[], d
 			const axis = side >> 1;
 			const wall = side % 2 === 0 ? box.min[axis] - CLEAR : box.max[axis] + CLEAR;
 			if (wall < inside.min[axis] + HAIR || wall > inside.max[axis] - HAIR) continue;
+			// An end beyond the other side would have to come back through the block.
+			const at = 3 * i + axis;
+			const [start, end] = [bent.start[at], bent.start[at] + bent.way[at]];
+			if (side % 2 === 0 ? Math.max(start, end) >= box.max[axis] : Math.min(start, end) <= box.min[axis]) continue;
 			let most = 0;
 			for (const s of met) {
 				const weight = leaveWeight(s) + reachWeight(s);
-				most = Math.max(most, Math.abs(pushOut(bent, 3 * i + axis, s, box, side)) / weight);
+				most = Math.max(most, Math.abs(pushOut(bent, at, s, box, side)) / weight);
 			}
 			// Metres: what the measure of spacing shortens is as far to fly.
 			if (axis === 2) most *= downwash;
