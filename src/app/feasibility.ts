@@ -5,6 +5,7 @@ import { createBeatMap, endOfShow, type FleetSlots, type Show } from "../core/sh
 import { StarstaveError } from "../core/units/index.ts";
 import type { Player } from "../platform/player.ts";
 import type { JobAnswer, WorkerClient } from "../workers/index.ts";
+import { createCareWatch } from "./care-watch.ts";
 import type { JobLedger } from "./job-ledger.ts";
 import type { Keeper } from "./keeper.ts";
 import { basisOf, changedLegs, type LegBasis, sameBasis } from "./leg-basis.ts";
@@ -64,6 +65,7 @@ const NONE: ReadonlySet<string> = new Set();
 
 export function createFeasibility({ store, workers, player, ledger, keeper, notices }: FeasibilityParts): Feasibility {
 	const cache = createPlanCache(workers, keeper);
+	const care = createCareWatch(store, workers, ledger, notices);
 	let laid: Laid | null = null;
 	let assembled: Assembled | null = null;
 	/** What the check in the store was made for. */
@@ -78,6 +80,7 @@ export function createFeasibility({ store, workers, player, ledger, keeper, noti
 		laid = null;
 		assembled = null;
 		checked = null;
+		care.clear();
 		store.setState({ slots: null, ground: null, flight: null, light: null, check: null, flashes: [], unchecked: NONE });
 	};
 
@@ -193,6 +196,7 @@ export function createFeasibility({ store, workers, player, ledger, keeper, noti
 		if (started !== turn) return false;
 		checked = basis;
 		store.setState({ check, flashes, unchecked: NONE });
+		care.follow(show, laid.slots, flight);
 		return true;
 	};
 
@@ -250,6 +254,7 @@ export function createFeasibility({ store, workers, player, ledger, keeper, noti
 		reset: clear,
 		settled: async () => {
 			while (running !== null) await running;
+			await care.settled();
 		},
 	};
 }

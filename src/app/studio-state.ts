@@ -1,4 +1,4 @@
-import type { ShowCheck, ShowFlight } from "../core/flight/index.ts";
+import type { Care, ShowCheck, ShowFlight } from "../core/flight/index.ts";
 import type { Flash, LightProgram } from "../core/light/index.ts";
 import type { Analysis } from "../core/music/index.ts";
 import type { FleetSlots, Show } from "../core/show/index.ts";
@@ -53,6 +53,8 @@ export interface StudioState {
 	readonly light: LightProgram | null;
 	readonly flight: ShowFlight | null;
 	readonly check: ShowCheck | null;
+	/** Worked out after the check, so it may be older than the show for a moment. */
+	readonly care: Care | null;
 	/** More flashes a second than WCAG 2.3.1 allows, as sentences with their places: a warning. */
 	readonly flashes: readonly Flash[];
 	/** Ids of transitions (and "launch", "landing") whose answer is older than the show. */

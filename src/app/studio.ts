@@ -51,6 +51,7 @@ export function createStudio(parts: StudioParts): Studio {
 		light: null,
 		flight: null,
 		check: null,
+		care: null,
 		flashes: [],
 		unchecked: new Set(),
 		playback: parts.player.state,

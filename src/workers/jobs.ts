@@ -1,6 +1,7 @@
 import type { Samples } from "../core/decode/index.ts";
 import type { RoughCut, RoughCutOptions } from "../core/draft/index.ts";
 import type {
+	Care,
 	FoundRemedy,
 	Leg,
 	LegProblem,
@@ -193,6 +194,12 @@ async function remedies(ask: RemediesAsk): Promise<FoundRemedy[]> {
 	return searchRemedies(ask.show, ask.slots, ask.flight, ask.check, ask.id, ask.search);
 }
 
+/** What the flight asks beyond its proof. */
+async function care({ show, slots, flight }: Pick<CheckAsk, "show" | "slots" | "flight">): Promise<Care> {
+	const { careFor } = await import("../core/flight/index.ts");
+	return careFor(show, slots, flight);
+}
+
 export interface DraftAsk {
 	readonly analysis: Analysis;
 	readonly soundtrack: Soundtrack;
@@ -209,6 +216,8 @@ export interface HandOffAsk {
 	readonly slots: ReadonlyMap<string, FleetSlots>;
 	readonly flight: ShowFlight;
 	readonly check: ShowCheck;
+	/** Null: worked out on the way. */
+	readonly care: Care | null;
 	readonly curves: readonly Curve[];
 	readonly options: HandoffOptions;
 }
@@ -223,14 +232,16 @@ export interface HandOffAnswer {
 }
 
 async function handoff(ask: HandOffAsk, report: Report): Promise<HandOffAnswer> {
-	const [{ handOff }, { compileLight }, { zipSync }] = await Promise.all([
+	const [{ handOff }, { careFor }, { compileLight }, { zipSync }] = await Promise.all([
 		import("../core/handoff/index.ts"),
+		import("../core/flight/index.ts"),
 		import("../core/light/index.ts"),
 		import("fflate"),
 	]);
 	const { show, flight, check, options } = ask;
 	const light = compileLight(show, flight.stays, new Map(ask.slots), ask.curves);
-	const { files, revision, draft, notes } = handOff({ show, flight, check, light }, options, report);
+	const care = ask.care ?? careFor(show, ask.slots, flight);
+	const { files, revision, draft, notes } = handOff({ show, flight, check, care, light }, options, report);
 	const zip =
 		files.length === 0
 			? null
@@ -262,7 +273,7 @@ async function readShape(ask: { readonly name: string; readonly text: string; re
 	return isSvg ? { shape: readSvg(ask.text, ask.name, { count: ask.count }) } : readPointsCsv(ask.text, ask.name);
 }
 
-export const jobs = { analyse, lay, plan, assemble, check, remedies, draft, handoff, read, write, readShape };
+export const jobs = { analyse, lay, plan, assemble, check, care, remedies, draft, handoff, read, write, readShape };
 
 export type JobKind = keyof typeof jobs;
 export type JobAsk<K extends JobKind> = Parameters<(typeof jobs)[K]>[0];

@@ -2,7 +2,7 @@ import { createHash } from "node:crypto";
 import { readFileSync } from "node:fs";
 import { unzipSync } from "fflate";
 import { describe, expect, it } from "vitest";
-import { flyShow } from "../../src/core/flight/index.ts";
+import { careFor, flyShow } from "../../src/core/flight/index.ts";
 import { fleetSlotsOf, takeoffSlots } from "../../src/core/formation/index.ts";
 import { handOff } from "../../src/core/handoff/index.ts";
 import { compileLight } from "../../src/core/light/index.ts";
@@ -34,7 +34,7 @@ describe("the demo show", () => {
 		const { flight, check } = flyShow(show, slots, ground);
 		expect(check.flies).toBe(true);
 		const { files } = handOff(
-			{ show, flight, check, light: compileLight(show, flight.stays, slots, []) },
+			{ show, flight, check, care: careFor(show, slots, flight), light: compileLight(show, flight.stays, slots, []) },
 			{ lightRate: 10 },
 		);
 		const zip = files.find((file) => file.name === "flight-paths.zip")!;

@@ -129,7 +129,7 @@ export function showCommands(bench: Workbench): ShowCommands {
 			attempt(async () => {
 				bench.endDrag();
 				await feasibility.settled();
-				const { show, slots, flight, check, analysis, unchecked } = store.getState();
+				const { show, slots, flight, check, care, analysis, unchecked } = store.getState();
 				if (show === null || slots === null || flight === null || check === null || unchecked.size > 0) {
 					throw new StarstaveError("flight", "The show has to be checked before it is handed off: see Verdicts.");
 				}
@@ -137,7 +137,7 @@ export function showCommands(bench: Workbench): ShowCommands {
 				const timecode = { rate: options.timecode?.rate ?? "25", start: options.timecode?.start ?? "01:00:00:00" };
 				const missing = "The soundtrack was not at hand, so flashes of what follows the music can't be judged.";
 				const notes = analysis === null && show.soundtrack !== null ? [missing] : [];
-				const ask = { show, slots, flight, check, curves, options: { ...options, timecode, notes } };
+				const ask = { show, slots, flight, check, care, curves, options: { ...options, timecode, notes } };
 				const answer = await ledger.run("Writing the hand-off", (signal, onProgress) =>
 					parts.workers.run("handoff", ask, { signal, onProgress }),
 				);

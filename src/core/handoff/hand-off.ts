@@ -1,5 +1,5 @@
 import { strToU8 } from "fflate";
-import { dronePositions, type ShowCheck, type ShowFlight } from "../flight/index.ts";
+import { type Care, dronePositions, type ShowCheck, type ShowFlight } from "../flight/index.ts";
 import { type Flash, findFlashes, type LightProgram, lightAt } from "../light/index.ts";
 import { createBeatMap, endOfShow, type Show, writeShow } from "../show/index.ts";
 import { CAUTIONS } from "./cautions.ts";
@@ -17,6 +17,7 @@ export interface HandoffInput {
 	readonly show: Show;
 	readonly flight: ShowFlight;
 	readonly check: ShowCheck;
+	readonly care: Care;
 	readonly light: LightProgram;
 	/** What flashes too often; looked for where it isn't given. */
 	readonly flashes?: readonly Flash[];
@@ -53,7 +54,7 @@ export function handOff(
 	options: HandoffOptions = {},
 	onProgress: (share: number, stage: string) => void = () => {},
 ): Handoff {
-	const { show, flight, check, light } = input;
+	const { show, flight, check, care, light } = input;
 	const timecode = options.timecode ?? DEFAULT_TIMECODE;
 	const revision = revisionCode(show);
 	const notes = [...(options.notes ?? [])];
@@ -88,6 +89,7 @@ export function handOff(
 	const report = writeReport({
 		show,
 		check,
+		care,
 		flight,
 		lines,
 		end,

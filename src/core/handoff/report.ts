@@ -1,15 +1,18 @@
-import type { ShowCheck, ShowFlight, TransitionCheck } from "../flight/index.ts";
+import type { Care, ShowCheck, ShowFlight, TransitionCheck } from "../flight/index.ts";
 import { find, type Show } from "../show/index.ts";
 import { GAP_TOLERANCE, LIMIT_TOLERANCE, TIGHT_SHARE } from "../units/index.ts";
+import { attentionOf, careSection } from "./care-section.ts";
 import { CAUTIONS } from "./cautions.ts";
 import type { CueLine } from "./cue-list.ts";
 import { escapeHtml, type Html, html, list, table } from "./html.ts";
+import { pageStyle, REPORT_STYLE } from "./report-style.ts";
 import { runSheet, STANDBY_SECONDS } from "./run-sheet.ts";
 import { framesASecond, type Timecode } from "./timecode.ts";
 
 export interface ReportInput {
 	readonly show: Show;
 	readonly check: ShowCheck;
+	readonly care: Care;
 	/** Null where there is nothing to fly. */
 	readonly flight: ShowFlight | null;
 	readonly lines: readonly CueLine[];
@@ -43,14 +46,13 @@ function legRow(show: Show, leg: TransitionCheck): readonly (string | Html)[] {
 	return [
 		html`<b>${cue === undefined ? leg.id : cue.number}</b>`,
 		`${formationName(show, leg.from)} to ${formationName(show, leg.to)}`,
-		html`<span class="${flies ? "flies" : "broken"}">${leg.verdicts.join(" ")}</span>`,
+		html`<span class="${flies ? "flies" : "broken"}">${leg.verdicts.join(", ")}</span>`,
 		number(leg.available, 2),
 		number(leg.needed, 2),
 		leg.slackBeats === null ? number(leg.slack, 2) : `${number(leg.slack, 2)} (${number(leg.slackBeats, 1)} beats)`,
 		leg.gap === null ? "one drone" : `${leg.gap.distance.toFixed(3)}${drones}`,
 		`${leg.peak.horizontal.toFixed(2)} / ${leg.peak.climb.toFixed(2)} / ${leg.peak.descent.toFixed(2)}`,
 		`${leg.peak.acceleration.toFixed(2)} / ${leg.peak.jerk.toFixed(2)}`,
-		leg.certificate.separation,
 	];
 }
 
@@ -66,12 +68,19 @@ function flightSection(show: Show, check: ShowCheck): Html {
 		"Gap m (drones)",
 		"Peak horizontal / climb / descent m/s",
 		"Peak acceleration m/s² / jerk m/s³",
-		"Separation proven by",
 	];
-	return table(
+	const rows = table(
 		head,
 		legs.map((leg) => legRow(show, leg)),
 	);
+	const proofs = new Map<string, string[]>();
+	for (const leg of legs) {
+		const name = find(show.cues, leg.id)?.number ?? leg.id;
+		const by = [...new Set(leg.certificate.separation.split("; "))].join("; ");
+		proofs.set(by, [...(proofs.get(by) ?? []), name]);
+	}
+	const proven = [...proofs].map(([by, names]) => `Separation of ${names.join(", ")}: ${by}.`);
+	return html`<div class="flight">${rows}</div><p class="rests">${proven.join(" ")}</p>`;
 }
 
 function remedySection(show: Show, check: ShowCheck): Html | null {
@@ -99,9 +108,18 @@ function limitsSection(show: Show): Html {
 			["Spacing, vertically (spacing × downwash)", `${limits.spacing * limits.downwash} m`],
 			["Endurance from motor start", `${limits.endurance} s, ${Math.round(100 * limits.reserve)} % of it in reserve`],
 			["Position error of the fleet", `${show.fleet.positionError} m`],
-			["Wind of the venue", `${show.venue.wind} m/s`],
+			["Mass of a drone", `${show.fleet.mass} kg`],
+			["Wind of the venue, and gust on top of it", `${show.venue.wind} m/s, ${show.venue.gust} m/s`],
+			["Flight volume", volumeText(show)],
+			["Buffer around it", `${show.venue.buffer} m`],
 		],
 	);
+}
+
+/** "−90 to 90 m right, 0 to 100 m away, 0 to 120 m up". */
+function volumeText({ venue: { volume } }: Show): string {
+	const axes = ["right", "away", "up"];
+	return axes.map((axis, k) => `${volume.min[k]} to ${volume.max[k]} m ${axis}`.replaceAll("-", "−")).join(", ");
 }
 
 function assumptions(input: ReportInput): string[] {
@@ -124,22 +142,24 @@ function assumptions(input: ReportInput): string[] {
 	return said;
 }
 
-const STYLE = `
-body { font: 10pt/1.4 system-ui, sans-serif; color: #111; background: #fff; margin: 2rem auto; max-width: 72rem; padding: 0 1rem; }
-h1 { font-size: 18pt; margin: 0 0 .2em; } h2 { font-size: 13pt; margin: 1.6em 0 .4em; border-bottom: 1px solid #999; } h3 { font-size: 11pt; }
-h2 small { font-weight: normal; color: #444; float: right; font-size: 9pt; }
-table { border-collapse: collapse; width: 100%; font-size: 8.5pt; font-variant-numeric: tabular-nums; }
-th, td { border-bottom: 1px solid #ccc; padding: .2em .5em .2em 0; text-align: left; vertical-align: top; }
-tr { break-inside: avoid; } .answer { font-size: 13pt; font-weight: bold; }
-@media print { .sheet { break-before: page; } }
-.broken { font-weight: bold; text-decoration: underline; } .draft { border: 2px solid #111; padding: .5em 1em; font-weight: bold; }
-`;
+/** How the legs came out, in one sentence. */
+function summary(check: ShowCheck): string {
+	const legs = [check.launch, ...check.transitions, check.landing].filter((leg) => leg !== null);
+	const broken = legs.filter((leg) => !leg.verdicts.includes("flies")).length;
+	const tight = legs.filter((leg) => leg.verdicts.includes("tight")).length;
+	const said = broken === 0 ? "every one flies" : `${broken} of them can't be flown`;
+	const close = tight === 0 ? "none is tight" : `${tight} ${tight === 1 ? "is" : "are"} tight`;
+	return `Launch, landing and ${check.transitions.length} transitions were proven one by one: ${said}, ${close}.`;
+}
 
-/** CSS string in the page's margins: the code stands on every printed page. */
-function pageStyle(title: string, revision: string): string {
-	// A CSS string ends at its quote or at a line break, and a style element at its end tag: neither may come from the title.
-	const safe = title.replace(/[^\p{L}\p{N} .,:()·–-]/gu, " ").slice(0, 60);
-	return `@page { size: A4 landscape; margin: 15mm 12mm 18mm; @bottom-left { content: "${safe} · revision ${revision}"; font: 8pt sans-serif; } @bottom-right { content: "page " counter(page) " of " counter(pages); font: 8pt sans-serif; } }`;
+/** Empty lines for the people who decide. */
+function decision(): Html {
+	const rows = [
+		"Wind aloft, gusts, rain, icing",
+		"Field clear out to the fall zone and its surroundings",
+		"Go or no-go, name, time",
+	];
+	return html`<table class="decision"><tbody>${rows.map((row) => html`<tr><td>${row}</td><td></td></tr>`)}</tbody></table>\n`;
 }
 
 /** `report.html`: one page without anything outside itself, for the screen and for paper; the run sheet is in it. */
@@ -153,18 +173,22 @@ export function writeReport(input: ReportInput): string {
 	const formations = check.formations.map(({ id, gap, verdicts }) => [
 		formationName(show, id),
 		Number.isFinite(gap) ? gap.toFixed(3) : "one drone",
-		verdicts.join(" "),
+		verdicts.join(", "),
 	]);
 	const soundtrack =
 		show.soundtrack === null
 			? "no soundtrack"
 			: `${show.soundtrack.file}, ${show.soundtrack.duration.toFixed(2)} s, SHA-256 ${show.soundtrack.sha256}`;
+	const attention = [...attentionOf(show, input.care), ...input.flashes.map((flash) => `Flashes: ${flash}`)];
 	const body = html`<h1>${title}</h1>
-<p>Revision <b>${revision}</b> · ${show.fleet.count} drones · ${soundtrack}</p>
+<p class="facts">Revision <b>${revision}</b> · ${show.fleet.count} drones${show.fleet.spares > 0 ? ` and ${show.fleet.spares} spare` : null} · ${soundtrack}</p>
 ${input.draft ? html`<p class="draft">DRAFT: this hand-off holds no flight paths. Not for flight.</p>\n` : null}<p class="answer">${check.flies ? "The show flies, as planned and within the limits below." : "The show can't be flown as it stands."}</p>
-${heading("Cautions")}${list(CAUTIONS)}
-${heading("Flight")}${flightSection(show, check)}${remedySection(show, check)}
-${heading("Formations")}${table(["Formation", "Smallest distance m", "Verdict"], formations)}
+<p>${summary(check)} This report advises; whether to fly is decided on the night by the flight director.</p>
+<div class="cautions">${heading("Cautions")}${list(CAUTIONS)}</div>
+${heading("Needs attention")}${attention.length === 0 ? html`<p>Nothing beside the cautions was found that someone has to see to first.</p>\n` : list(attention)}
+${heading("The show as a whole")}${careSection(show, input.care, input.flight?.ground ?? null)}<div class="after"></div>
+${heading("Flight", true)}${flightSection(show, check)}${remedySection(show, check)}
+${heading("Formations")}<div class="narrow">${table(["Formation", "Smallest distance m", "Verdict"], formations)}</div>
 ${heading("Endurance")}<p>From the first motor start to the last landing ${airborne.toFixed(1)} s, against ${limit.toFixed(1)} s (endurance less reserve): ${enduranceHeld ? "held" : html`<b>not held</b>`}.</p>
 ${heading("Flashes")}${
 	input.flashes.length === 0
@@ -172,8 +196,10 @@ ${heading("Flashes")}${
 		: list(input.flashes)
 }
 ${heading("Notes")}${list([...check.notes, ...input.notes])}
-${heading("Limits")}${limitsSection(show)}
+${heading("Limits")}<div class="narrow">${limitsSection(show)}</div>
 ${heading("Assumptions and tolerances")}${list(assumptions(input))}
+${heading("Decision")}<p>To be filled in by hand on the night; nothing in these files does it for anyone.</p>
+${decision()}
 ${heading("Run sheet", true)}${runSheet(input.lines, input.flight, input.end, input.timecode)}`;
 	return `<!doctype html>
 <html lang="en-GB">
@@ -182,7 +208,7 @@ ${heading("Run sheet", true)}${runSheet(input.lines, input.flight, input.end, in
 <meta http-equiv="Content-Security-Policy" content="default-src 'none'; style-src 'unsafe-inline'">
 <meta name="viewport" content="width=device-width, initial-scale=1">
 <title>${escapeHtml(`${title} · ${revision}`)}</title>
-<style>${STYLE}${pageStyle(title, revision)}</style>
+<style>${REPORT_STYLE}${pageStyle(title, revision)}</style>
 </head>
 <body>
 ${body.html}

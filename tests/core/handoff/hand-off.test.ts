@@ -1,6 +1,6 @@
 import { strFromU8, unzipSync } from "fflate";
 import { describe, expect, it } from "vitest";
-import { flyShow, type Leg, type ShowFlight } from "../../../src/core/flight/index.ts";
+import { careFor, flyShow, type Leg, type ShowFlight } from "../../../src/core/flight/index.ts";
 import { fleetSlotsOf, takeoffSlots } from "../../../src/core/formation/index.ts";
 import { type HandoffInput, handOff } from "../../../src/core/handoff/index.ts";
 import { proveRate } from "../../../src/core/handoff/prove-rate.ts";
@@ -26,7 +26,13 @@ function makeShow(seconds: number): Show {
 function fly(show: Show): HandoffInput {
 	const slots = fleetSlotsOf(show);
 	const { flight, check } = flyShow(show, slots, takeoffSlots(show));
-	return { show, flight, check, light: compileLight(show, flight.stays, slots, []) };
+	return {
+		show,
+		flight,
+		check,
+		care: careFor(show, slots, flight),
+		light: compileLight(show, flight.stays, slots, []),
+	};
 }
 
 /**

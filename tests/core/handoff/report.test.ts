@@ -4,7 +4,7 @@ import { listCues } from "../../../src/core/handoff/cue-list.ts";
 import { type ReportInput, writeReport } from "../../../src/core/handoff/report.ts";
 import { revisionCode } from "../../../src/core/handoff/revision.ts";
 import { applyEdit, setTitle } from "../../../src/core/show/index.ts";
-import { checkOf, show } from "./sample-check.ts";
+import { careOf, checkOf, show } from "./sample-check.ts";
 
 const timecode = { rate: "29.97", start: "01:00:00:00" } as const;
 const revision = revisionCode(show);
@@ -14,6 +14,7 @@ function report(change: Partial<ReportInput> = {}): string {
 	return writeReport({
 		show,
 		check,
+		care: careOf(),
 		flight: null,
 		lines: listCues(show, check, timecode),
 		end: 60,
@@ -60,6 +61,39 @@ describe("the report", () => {
 		expect(page.match(/Standby/g)?.length).toBe(1);
 		expect(page).toContain("drop-frame");
 		expect(page).toContain("01:00:06;15");
+	});
+
+	it("says what needs attention first, and the whole show in sentences with what they rest on", () => {
+		const [before, after] = page.split("The show as a whole");
+		expect(before).toContain("Needs attention");
+		expect(before).toContain("Fall zone: A drone that loses power comes down as far as 48 m");
+		expect(before).not.toContain("Impact energy:");
+		expect(after).toContain("The fall zone reaches 3.2 m past the audience line (drone 5 at 0:12)");
+		expect(after).toContain(
+			"It stays 6.5 m inside the flight volume and its buffer of 10 m; nearest on the audience&#39;s left.",
+		);
+		expect(after).toContain("14.9 J (14 CFR 107.120) is passed after a fall of 3.5 m");
+		expect(after).toContain("These are marks on a scale, not a permission.");
+		expect(after).toContain(
+			"In Heart, after cue 12, 4 drones stand in the wake of others for 9.5 s, drone 3 under 2 of them.",
+		);
+		expect(after).toContain("Tilt Heart by 10°, away from the audience at its head.");
+		expect(after).toContain(
+			"The smallest gap as flown is 1.40 m (spacing 1.5 m), drones 1 and 4 in cue 12 at 0:13; in a gust 1.32 m.",
+		);
+		expect(after).toContain("An estimate, not a bound.");
+		expect(page).not.toMatch(/\b(is|are) safe\b/);
+	});
+
+	it("draws the ground with the fall zone's own corners", () => {
+		const svg = /<svg viewBox.*?<\/svg>/s.exec(page)?.[0] ?? "";
+		expect(svg).toContain('<polygon points="20.0,0.0 0.0,-30.0 -20.0,0.0" class="zone"/>');
+		expect(svg).toContain('x="-110.0"');
+	});
+
+	it("has nothing to see to where nothing was found", () => {
+		const calm = report({ care: { ...careOf(), fallZone: null, wakeHolds: [], wakeRemedies: [], airtime: null } });
+		expect(calm).toContain("Nothing beside the cautions was found that someone has to see to first.");
 	});
 
 	it("calls a draft a draft, and says what would make it fly", () => {

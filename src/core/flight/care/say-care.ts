@@ -34,7 +34,7 @@ const SIDES: Readonly<Record<BorderSide, string>> = {
 	away: "on the side away from the audience",
 };
 
-const metres = (value: number): string => `${value.toFixed(value < 10 ? 1 : 0)} m`;
+const metres = (value: number): string => `${value.toFixed(value < 1 ? 2 : value < 10 ? 1 : 0)} m`;
 const clock = (seconds: number): string => {
 	const whole = Math.round(Math.abs(seconds));
 	return `${seconds < 0 ? "−" : ""}${Math.floor(whole / 60)}:${String(whole % 60).padStart(2, "0")}`;
@@ -45,7 +45,7 @@ function sayFallZone(show: Show, zone: FallZone): CareTopic {
 	const { venue, fleet } = show;
 	const { farthest, audience, border } = zone;
 	const sentences = [
-		`A drone that loses power comes down as far as ${metres(farthest.distance)} from where it was, within ${zone.longest.toFixed(1)} s; farthest drone ${farthest.drone + 1} at ${clock(farthest.time)}, from a height of ${metres(farthest.height)}.`,
+		`A drone that loses power comes down as far as ${metres(farthest.distance)} from where it was, within ${zone.longest.toFixed(1)} s; farthest would be drone ${farthest.drone + 1} at ${clock(farthest.time)}, from a height of ${metres(farthest.height)}.`,
 	];
 	let attention = false;
 	if (audience === null) {
