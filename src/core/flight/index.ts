@@ -20,4 +20,13 @@ export { checkShow, type ProofCache } from "./show/check-show.ts";
 export { dronePositions } from "./show/drone-positions.ts";
 export { type FlownShow, flyShow } from "./show/fly-show.ts";
 export { legProblems, openingOf, withKey } from "./show/leg-problems.ts";
+export {
+	busiestMoment,
+	createMotion,
+	type LegTraces,
+	limitShare,
+	motionAt,
+	type Trace,
+	traceLegs,
+} from "./show/traces.ts";
 export type { Leg, ShowFlight } from "./show-flight.ts";
