@@ -28,7 +28,7 @@ export function redateCheck(check: ShowCheck, show: Show, flight: ShowFlight): S
 function redate(before: TransitionCheck, leg: Leg, show: Show, beatMap: BeatMap): TransitionCheck {
 	const cue = find(show.cues, before.id);
 	const available = leg.arrives - leg.departs;
-	const { needed, peak, gap } = before;
+	const { needed, peak, gap, breach } = before;
 	// A leg of no time at all has no finite speed: a millisecond stands for it, as in the proof.
 	const k = Math.max(available, 1e-3) / Math.max(before.available, 1e-3);
 	const held = beatMap.positionAt(leg.departs);
@@ -50,6 +50,7 @@ function redate(before: TransitionCheck, leg: Leg, show: Show, beatMap: BeatMap)
 			jerk: peak.jerk / k ** 3,
 		},
 		gap: gap && { ...gap, time: leg.departs + (gap.time - before.departs.time) * k },
+		breach: breach && { ...breach, time: leg.departs + (breach.time - before.departs.time) * k },
 		remedies: [],
 	};
 }

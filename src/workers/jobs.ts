@@ -5,6 +5,7 @@ import type {
 	FoundRemedy,
 	Leg,
 	LegProblem,
+	LegTraces,
 	Plan,
 	ProofCache,
 	RemedySearch,
@@ -19,6 +20,7 @@ import {
 	createBeatMap,
 	endOfShow,
 	type FleetSlots,
+	type Limits,
 	type PackedShow,
 	type Show,
 	type Soundtrack,
@@ -183,21 +185,23 @@ export interface RemediesAsk {
 	readonly slots: ReadonlyMap<string, FleetSlots>;
 	readonly flight: ShowFlight;
 	readonly check: ShowCheck;
-	/** The transition's cue. */
+	/** The transition's cue, or the formation. */
 	readonly id: string;
-	readonly search: RemedySearch;
+	/** Which way is looked for: of a transition one at a time, of a formation all at once. */
+	readonly search: RemedySearch | "formation";
 }
 
-/** One way of looking for remedies of a transition that doesn't fly: each planned and proven before it is offered. */
-async function remedies(ask: RemediesAsk): Promise<FoundRemedy[]> {
-	const { searchRemedies } = await import("../core/flight/index.ts");
-	return searchRemedies(ask.show, ask.slots, ask.flight, ask.check, ask.id, ask.search);
+/** Remedies of what doesn't fly, each planned and proven before it is offered. */
+async function remedies({ show, slots, flight, check, id, search }: RemediesAsk): Promise<FoundRemedy[]> {
+	const { mendedFormation, searchRemedies } = await import("../core/flight/index.ts");
+	if (search === "formation") return mendedFormation(show, slots, flight, check, id);
+	return searchRemedies(show, slots, flight, check, id, search);
 }
 
-/** What the flight asks beyond its proof. */
-async function care({ show, slots, flight }: Pick<CheckAsk, "show" | "slots" | "flight">): Promise<Care> {
-	const { careFor } = await import("../core/flight/index.ts");
-	return careFor(show, slots, flight);
+/** What the fleet does over the time of a leg. */
+async function traces(ask: { readonly legs: readonly Leg[]; readonly limits: Limits }): Promise<LegTraces> {
+	const { traceLegs } = await import("../core/flight/index.ts");
+	return traceLegs(ask.legs, ask.limits);
 }
 
 export interface DraftAsk {

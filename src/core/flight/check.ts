@@ -21,6 +21,8 @@ export interface TransitionCheck {
 	readonly peak: Proof["peak"];
 	/** Time in seconds of the show; drones from 0. */
 	readonly gap: Proof["gap"];
+	/** Where a drone first leaves the flight volume (`blocked` null) or enters a blocked one (its index): seconds of the show. */
+	readonly breach: { readonly drone: number; readonly time: number; readonly blocked: number | null } | null;
 	readonly certificate: { readonly assignment: string; readonly separation: string };
 	readonly remedies: readonly Remedy[];
 }

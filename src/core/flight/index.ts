@@ -14,7 +14,7 @@ export { PLANNER_VERSION, planLeg } from "./plan-leg.ts";
 export { neededTime, type PlanProof, provePlan } from "./proof/prove-plan.ts";
 export { applyRemedy, bestFirst, type Remedy, type RemedyStep } from "./remedy/remedy.ts";
 export type { Found as FoundRemedy } from "./remedy/reshape.ts";
-export { REMEDY_SEARCHES, type RemedySearch, searchRemedies } from "./remedy/search-remedies.ts";
+export { mendedFormation, REMEDY_SEARCHES, type RemedySearch, searchRemedies } from "./remedy/search-remedies.ts";
 export { assembleFlight } from "./show/assemble-flight.ts";
 export { checkShow, type ProofCache } from "./show/check-show.ts";
 export { dronePositions } from "./show/drone-positions.ts";

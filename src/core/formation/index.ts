@@ -1,5 +1,7 @@
 export { readCssColour } from "./css-colour.ts";
+export { moveIntoVenue, shareThatFits } from "./fit-venue.ts";
 export { type Contour, flattenSegments } from "./flatten.ts";
+export { type PartedSlots, partSlots } from "./part-slots.ts";
 export { parsePathData } from "./path-data.ts";
 export { toMillimetre } from "./place.ts";
 export { type PointsFile, readPointsCsv } from "./points-csv.ts";

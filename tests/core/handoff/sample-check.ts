@@ -24,6 +24,7 @@ const leg: TransitionCheck = {
 	verdicts: ["flies"],
 	peak: { horizontal: 4.2, climb: 1, descent: 0.5, acceleration: 2, jerk: 6 },
 	gap: { distance: 1.7, time: 12, drones: [0, 3] },
+	breach: null,
 	certificate: { assignment: "optimal", separation: "Bernstein" },
 	remedies: [],
 };

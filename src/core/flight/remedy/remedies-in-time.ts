@@ -135,7 +135,7 @@ function fasterLaw(check: TransitionCheck, show: Show, problem: LegProblem | und
 		kind: "time-law",
 		change: "Fly on the S-curve instead of minimum jerk.",
 		cost: `It starts and stops less softly; ${inHand(check.available, plan.shortest)}.`,
-		loss: 0.02,
+		loss: 0,
 		...changing(check.id, { timeLaw: "s-curve" }),
 	};
 }

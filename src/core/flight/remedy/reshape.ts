@@ -226,7 +226,7 @@ function sizeWay(
 }
 
 /** Largest side of the box about the lit slots, m. */
-function extentOf({ positions }: FleetSlots): number {
+export function extentOf({ positions }: Pick<FleetSlots, "positions">): number {
 	let widest = 0;
 	for (let axis = 0; axis < 3; axis++) {
 		let [low, high] = [Number.POSITIVE_INFINITY, Number.NEGATIVE_INFINITY];

@@ -2,6 +2,7 @@ import type { FleetSlots, Show } from "../../show/index.ts";
 import type { ShowCheck } from "../check.ts";
 import type { ShowFlight } from "../show-flight.ts";
 import { goByWay } from "./by-way.ts";
+import { mendFormation } from "./mend-formation.ts";
 import { type Found, type Reshaping, reshape } from "./reshape.ts";
 import { trialBase } from "./trial.ts";
 
@@ -29,6 +30,20 @@ export function searchRemedies(
 	if (transition === undefined || transition.verdicts.includes("flies")) return [];
 	const base = trialBase(show, slots, flight, failingLegs(check));
 	return search === "way" ? goByWay(base, transition) : reshape(base, transition, search satisfies Reshaping);
+}
+
+/**
+ * Remedies of a formation in which the fleet can't stand, each laid out and checked, best first. Flights to and from it
+ * are planned, and what becomes of them is part of the cost.
+ */
+export function mendedFormation(
+	show: Show,
+	slots: ReadonlyMap<string, FleetSlots>,
+	flight: ShowFlight,
+	check: ShowCheck,
+	id: string,
+): Found[] {
+	return mendFormation(trialBase(show, slots, flight, failingLegs(check)), id);
 }
 
 export function failingLegs({ launch, landing, transitions }: ShowCheck): Set<string> {

@@ -1,12 +1,13 @@
-import { smallestGap } from "../../maths/index.ts";
 import { createBeatMap, cuePosition, type FleetSlots, type Show } from "../../show/index.ts";
-import { GAP_TOLERANCE, TIGHT_SHARE } from "../../units/index.ts";
+import { GAP_TOLERANCE } from "../../units/index.ts";
 import type { FormationCheck, ShowCheck, TransitionCheck } from "../check.ts";
+import { lawAt, lawDuration } from "../law/time-law.ts";
 import type { LegProblem } from "../leg-problem.ts";
 import type { Plan, Proof, Verdict } from "../plan.ts";
 import { neededTime, type PlanProof, proofFor, provePlanOnce } from "../proof/prove-plan.ts";
 import { findRemedies } from "../remedy/remedies-in-time.ts";
 import type { Leg, ShowFlight } from "../show-flight.ts";
+import { checkSlots } from "./check-slots.ts";
 import { legProblems } from "./leg-problems.ts";
 
 const OWN_PLACE = "each drone to its own place";
@@ -82,6 +83,7 @@ function checkLeg(show: Show, leg: Leg, problem: LegProblem, proofs: ProofCache)
 		verdicts: proof.verdicts,
 		peak: proof.peak,
 		gap: gapInShow(proof, leg),
+		breach: breachInShow(kept.proof, leg),
 		certificate: { assignment: describeAssignment(problem, plan), separation: proof.separation },
 		remedies: [],
 	};
@@ -99,6 +101,25 @@ function gapInShow(proof: Proof, leg: Leg): Proof["gap"] {
 	const first = leg.rowOfDrone.indexOf(drones[0]);
 	const second = leg.rowOfDrone.indexOf(drones[1]);
 	return { distance, time: leg.departs + time, drones: [Math.min(first, second), Math.max(first, second)] };
+}
+
+/** Likewise for the first drone that leaves the flight volume or enters a blocked one. */
+function breachInShow({ breach }: PlanProof, leg: Leg): TransitionCheck["breach"] {
+	if (breach === null) return null;
+	const { law } = leg.plan;
+	const own = lawDuration(law);
+	let [low, high] = [0, own];
+	for (let k = 0; k < 50; k++) {
+		const middle = (low + high) / 2;
+		if (lawAt(law, middle) < breach.at) low = middle;
+		else high = middle;
+	}
+	const share = own > 0 ? high / own : 0;
+	return {
+		drone: leg.rowOfDrone.indexOf(breach.drone),
+		time: leg.departs + share * (leg.arrives - leg.departs),
+		blocked: breach.blocked < 0 ? null : breach.blocked,
+	};
 }
 
 function describeAssignment(problem: LegProblem, plan: Plan): string {
@@ -146,6 +167,7 @@ function joinTwo(first: TransitionCheck, second: TransitionCheck): TransitionChe
 			jerk: most("jerk"),
 		},
 		gap: gaps[0] ?? null,
+		breach: first.breach ?? second.breach,
 		certificate: {
 			assignment: free.certificate.assignment,
 			separation: [...new Set([first.certificate.separation, second.certificate.separation])].join("; "),
@@ -156,28 +178,9 @@ function joinTwo(first: TransitionCheck, second: TransitionCheck): TransitionChe
 
 /** Every formation's own gap, reserve slots included, and its place in the venue. */
 function checkFormations(show: Show, slots: ReadonlyMap<string, FleetSlots>): FormationCheck[] {
-	const { limits } = show.fleet;
-	const { volume, blocked } = show.venue;
 	return show.formations.order.map((id) => {
 		const positions = slots.get(id)?.all ?? new Float64Array(0);
-		const gap = smallestGap(positions, limits.downwash).distance;
-		const verdicts: Verdict[] = [];
-		if (gap < limits.spacing - GAP_TOLERANCE) verdicts.push("too-close");
-		const within = (k: number, box: { min: readonly number[]; max: readonly number[] }, wall: number): boolean =>
-			[0, 1, 2].every((axis) => {
-				const value = positions[k + axis];
-				return value >= box.min[axis] - wall && value <= box.max[axis] + wall;
-			});
-		let outside = false;
-		for (let k = 0; k < positions.length && !outside; k += 3) {
-			outside = !within(k, volume, 1e-6) || blocked.some((box) => within(k, box, -1e-6));
-		}
-		if (outside) verdicts.push("out-of-venue");
-		if (verdicts.length === 0) {
-			verdicts.push("flies");
-			if (gap < (1 + TIGHT_SHARE) * limits.spacing) verdicts.push("tight");
-		}
-		return { id, gap, verdicts };
+		return { id, ...checkSlots(positions, show.fleet.limits, show.venue) };
 	});
 }
 
