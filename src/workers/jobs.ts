@@ -198,6 +198,12 @@ async function remedies({ show, slots, flight, check, id, search }: RemediesAsk)
 	return searchRemedies(show, slots, flight, check, id, search);
 }
 
+/** What the flight asks beyond its proof. */
+async function care({ show, slots, flight }: Pick<CheckAsk, "show" | "slots" | "flight">): Promise<Care> {
+	const { careFor } = await import("../core/flight/index.ts");
+	return careFor(show, slots, flight);
+}
+
 /** What the fleet does over the time of a leg. */
 async function traces(ask: { readonly legs: readonly Leg[]; readonly limits: Limits }): Promise<LegTraces> {
 	const { traceLegs } = await import("../core/flight/index.ts");
@@ -277,7 +283,21 @@ async function readShape(ask: { readonly name: string; readonly text: string; re
 	return isSvg ? { shape: readSvg(ask.text, ask.name, { count: ask.count }) } : readPointsCsv(ask.text, ask.name);
 }
 
-export const jobs = { analyse, lay, plan, assemble, check, care, remedies, draft, handoff, read, write, readShape };
+export const jobs = {
+	analyse,
+	lay,
+	plan,
+	assemble,
+	check,
+	care,
+	remedies,
+	traces,
+	draft,
+	handoff,
+	read,
+	write,
+	readShape,
+};
 
 export type JobKind = keyof typeof jobs;
 export type JobAsk<K extends JobKind> = Parameters<(typeof jobs)[K]>[0];
