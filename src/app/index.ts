@@ -1,4 +1,4 @@
 export type { Commands, CueDrag, Drag, HandOffChoice } from "./commands/command-types.ts";
 export type { StudioParts } from "./parts.ts";
 export { createStudio, type Studio } from "./studio.ts";
-export type { Job, Notice, Selection, StudioState } from "./studio-state.ts";
+export type { Inquired, Job, Notice, Selection, StudioState } from "./studio-state.ts";

@@ -1,4 +1,4 @@
-import type { Care, ShowCheck, ShowFlight } from "../core/flight/index.ts";
+import type { Care, LegTraces, Remedy, ShowCheck, ShowFlight } from "../core/flight/index.ts";
 import type { Flash, LightProgram } from "../core/light/index.ts";
 import type { Analysis } from "../core/music/index.ts";
 import type { FleetSlots, Show } from "../core/show/index.ts";
@@ -27,6 +27,17 @@ export type Selection =
 	| { readonly kind: "cues"; readonly ids: readonly string[] }
 	| { readonly kind: "section"; readonly id: string }
 	| { readonly kind: "formation"; readonly id: string };
+
+/** What has been found out about one part of the show that is being looked into. */
+export interface Inquired {
+	readonly part: { readonly kind: "leg" | "formation"; readonly id: string };
+	/** Of a leg; null until they are there. */
+	readonly traces: LegTraces | null;
+	/** Of what doesn't fly, beside those that the check itself names; best first. */
+	readonly remedies: readonly Remedy[];
+	/** More may be found. */
+	readonly searching: boolean;
+}
 
 /** Everything the screens show. Typed arrays (plans, peaks, curves) are held by reference and never patched. */
 export interface StudioState {
@@ -59,6 +70,8 @@ export interface StudioState {
 	readonly flashes: readonly Flash[];
 	/** Ids of transitions (and "launch", "landing") whose answer is older than the show. */
 	readonly unchecked: ReadonlySet<string>;
+	/** The part of the show that is being looked into; null: none. */
+	readonly inquired: Inquired | null;
 	/** The part of playing that doesn't change with every frame; where the ear is, says `player.heardAt`. */
 	readonly playback: PlayerState;
 	readonly selection: Selection;

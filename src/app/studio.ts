@@ -9,6 +9,7 @@ import { gridCommands } from "./commands/grid-commands.ts";
 import { showCommands } from "./commands/show-commands.ts";
 import { beginCueDrag, beginDrag } from "./drag.ts";
 import { createFeasibility } from "./feasibility.ts";
+import { createInquiry } from "./inquiry.ts";
 import { createJobLedger } from "./job-ledger.ts";
 import { createKeeper } from "./keeper.ts";
 import { createNotices } from "./notices.ts";
@@ -54,6 +55,7 @@ export function createStudio(parts: StudioParts): Studio {
 		care: null,
 		flashes: [],
 		unchecked: new Set(),
+		inquired: null,
 		playback: parts.player.state,
 		selection: { kind: "nothing" },
 		jobs: [],
@@ -66,7 +68,8 @@ export function createStudio(parts: StudioParts): Studio {
 	const keeper = createKeeper(store, notices);
 	const { workers, player } = parts;
 	const feasibility = createFeasibility({ store, workers, player, ledger, keeper, notices });
-	const bench = createWorkbench({ parts, store, notices, ledger, keeper, feasibility });
+	const inquiry = createInquiry({ store, workers, ledger, notices });
+	const bench = createWorkbench({ parts, store, notices, ledger, keeper, feasibility, inquiry });
 
 	const unsubscribe = [
 		player.subscribe((playback) => store.setState({ playback })),
@@ -101,7 +104,10 @@ export function createStudio(parts: StudioParts): Studio {
 			store.setState({ started: true });
 			if (!found && show === null && readOnly === null && parts.fetchDemo !== null) await commands.openDemo();
 		},
-		settled: () => feasibility.settled(),
+		settled: async () => {
+			await feasibility.settled();
+			await inquiry.settled();
+		},
 		flush: () => keeper.flush(),
 		close: async () => {
 			for (const stop of unsubscribe) stop();

@@ -5,6 +5,7 @@ import type { NamedBytes } from "../platform/files.ts";
 import type { Lease } from "../platform/lease.ts";
 import type { Feasibility } from "./feasibility.ts";
 import { createHistory, type History } from "./history.ts";
+import type { Inquiry } from "./inquiry.ts";
 import type { JobLedger } from "./job-ledger.ts";
 import type { Keeper } from "./keeper.ts";
 import type { Notices } from "./notices.ts";
@@ -20,6 +21,7 @@ export interface Workbench {
 	readonly history: History;
 	readonly keeper: Keeper;
 	readonly feasibility: Feasibility;
+	readonly inquiry: Inquiry;
 	/** The soundtrack's file as the client gave it. */
 	soundtrack: NamedBytes | null;
 	/** This tab's leave to write; null until it has asked. */
@@ -39,7 +41,7 @@ export interface Workbench {
 	showChanged(change: { readonly keep: boolean }): void;
 }
 
-type Built = Pick<Workbench, "parts" | "store" | "notices" | "ledger" | "keeper" | "feasibility">;
+type Built = Pick<Workbench, "parts" | "store" | "notices" | "ledger" | "keeper" | "feasibility" | "inquiry">;
 
 export function createWorkbench(built: Built): Workbench {
 	const { store, notices } = built;

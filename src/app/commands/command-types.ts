@@ -12,7 +12,7 @@ import type {
 	Venue,
 } from "../../core/show/index.ts";
 import type { PlayRate } from "../../platform/player.ts";
-import type { Selection } from "../studio-state.ts";
+import type { Inquired, Selection } from "../studio-state.ts";
 
 /**
  * All that can be done, by theme. No command throws: what goes wrong becomes a notice, and the answer is false or null.
@@ -62,6 +62,7 @@ export interface CueCommands {
 	renumberCue(id: string, number: string): boolean;
 	copyCues(ids: readonly string[], at: number): readonly string[] | null;
 	removeCues(ids: readonly string[]): boolean;
+	/** As one edit, whatever it changes. */
 	applyRemedy(remedy: Remedy): boolean;
 }
 
@@ -113,6 +114,8 @@ export interface DeskCommands {
 	selectCue(id: string, add?: boolean): void;
 	undo(): boolean;
 	redo(): boolean;
+	/** Traces and remedies of a leg or a formation, into `inquired`; null ends it. */
+	lookInto(part: Inquired["part"] | null): void;
 	dismissNotice(id: string): void;
 	cancelJob(id: string): void;
 	play(): Promise<void>;

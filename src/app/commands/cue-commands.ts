@@ -45,7 +45,9 @@ export function cueCommands(bench: Workbench): CueCommands {
 			return copies;
 		},
 		removeCues: (ids) => bench.edit(`Remove ${called(ids)}`, (draft) => removeCues(draft, ids)) !== null,
-		applyRemedy: (remedy) =>
-			bench.edit(remedy.change.replace(/\.$/, ""), (draft) => applyRemedy(draft, remedy)) !== null,
+		applyRemedy: (remedy) => {
+			bench.feasibility.takePlans(bench.inquiry.plansOf(remedy));
+			return bench.edit(remedy.change.replace(/\.$/, ""), (draft) => applyRemedy(draft, remedy)) !== null;
+		},
 	};
 }

@@ -15,6 +15,7 @@ export function deskCommands(bench: Workbench): DeskCommands {
 		},
 		undo: () => bench.walk("undo"),
 		redo: () => bench.walk("redo"),
+		lookInto: (part) => bench.inquiry.lookInto(part),
 		dismissNotice: (id) => notices.dismiss(id),
 		cancelJob: (id) => ledger.cancel(id),
 		play: async () => {
