@@ -6,7 +6,7 @@ import { createBeatMap, find, type Show, transitionsInTime } from "../core/show/
  * drag of a cue in time is told from a change of a formation without looking into either.
  */
 export interface LegBasis {
-	/** Everything but the legs: fleet, venue, take-off grid, and all formations. */
+	/** Everything but the legs: what of fleet and venue counts, take-off grid, opening, and all formations. */
 	readonly common: readonly unknown[];
 	/** Every leg of the show: its id, and what it depends on beside `common`. */
 	readonly legs: ReadonlyMap<string, readonly unknown[]>;
@@ -23,7 +23,12 @@ export function basisOf(show: Show): LegBasis {
 		from = to;
 	}
 	legs.set("landing", [from, show.takeoff]);
-	return { common: [show.fleet, show.venue, show.takeoff, openingOf(show), show.formations], legs };
+	return { common: [spaceOf(show), show.takeoff, openingOf(show), show.formations], legs };
+}
+
+/** What of fleet and venue slots and plans depend on. Wind, mass and the like move no drone. */
+function spaceOf({ fleet, venue }: Show): string {
+	return JSON.stringify([fleet.count, fleet.limits, venue.volume, venue.blocked]);
 }
 
 const same = (a: readonly unknown[], b: readonly unknown[]): boolean =>
@@ -39,7 +44,7 @@ export function sameBasis(a: LegBasis, b: LegBasis): boolean {
 /** Ids of legs of `after` whose answer is no longer known from `before`. */
 export function changedLegs(before: LegBasis | null, after: LegBasis): Set<string> {
 	// All formations together are no part of one leg; the two that it flies between are.
-	const sameCommon = before !== null && same(before.common.slice(0, 3), after.common.slice(0, 3));
+	const sameCommon = before !== null && same(before.common.slice(0, 2), after.common.slice(0, 2));
 	const changed = new Set<string>();
 	for (const [id, parts] of after.legs) {
 		const known = sameCommon ? before.legs.get(id) : undefined;

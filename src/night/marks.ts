@@ -1,4 +1,5 @@
 import { type Camera, projectPoint } from "./camera.ts";
+import { drawGround, type GroundMarks } from "./ground-marks.ts";
 
 /** What the designer must see besides the lights. */
 export interface NightMarks {
@@ -10,6 +11,8 @@ export interface NightMarks {
 	} | null;
 	/** Drones over one of their limits: a tick at the side. */
 	readonly troubled: readonly number[];
+	/** What lies on the ground; null where it isn't looked at. */
+	readonly ground: GroundMarks | null;
 }
 
 const TROUBLE = "#ff6a4d";
@@ -26,6 +29,7 @@ export function drawMarks(
 	ratio: number,
 ): void {
 	pen.clearRect(0, 0, width, height);
+	if (marks.ground) drawGround(pen, camera, marks.ground, width, height, ratio);
 	const at = (drone: number) =>
 		projectPoint(camera, positions[3 * drone]!, positions[3 * drone + 1]!, positions[3 * drone + 2]!, width, height);
 	pen.lineWidth = 1.5 * ratio;

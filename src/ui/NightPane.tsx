@@ -21,6 +21,8 @@ export function NightPane() {
 	const viewpoint = useStore(desk, (state) => state.viewpoint);
 	const venue = useStudioState((state) => state.show?.venue ?? null);
 	const slots = useStudioState((state) => state.slots);
+	const looksDown = useStore(desk, (state) => state.viewpoint === "plan" && state.margin === "care");
+	const care = useStudioState((state) => (looksDown ? state.care : null));
 	const hasFlight = useStudioState((state) => state.flight !== null);
 	const hasShow = useStudioState((state) => state.show !== null);
 	const fresh = useRef(true);
@@ -33,7 +35,7 @@ export function NightPane() {
 			(made) => {
 				if (gone) return made.destroy();
 				view.current = made;
-				aim(made, studio.store.getState());
+				aim(made, { ...studio.store.getState(), care: null });
 				made.setViewpoint(desk.getState().viewpoint);
 				fresh.current = true;
 			},
@@ -60,8 +62,8 @@ export function NightPane() {
 		};
 	}, [studio]);
 	useEffect(() => {
-		if (venue && view.current) aim(view.current, { ...studio.store.getState(), slots });
-	}, [venue, slots, studio]);
+		if (venue && view.current) aim(view.current, { ...studio.store.getState(), slots, care });
+	}, [venue, slots, care, studio]);
 	useEffect(() => view.current?.setViewpoint(viewpoint), [viewpoint]);
 
 	const buffers = useRef({ positions: new Float32Array(0), colours: new Uint8Array(0) });
@@ -81,7 +83,7 @@ export function NightPane() {
 			view.current.draw({
 				positions,
 				colours,
-				marks: marksAt(state, seconds, positions),
+				marks: marksAt(state, seconds, positions, desk.getState().viewpoint),
 				showUnlit: desk.getState().showUnlit,
 			});
 		},
@@ -142,7 +144,20 @@ function turning(view: { current: NightView | null }, changed: () => void) {
 
 function aim(view: NightView, state: StudioState): void {
 	if (!state.show) return;
-	view.setVenue(state.show.venue, extentOf(state));
+	view.setVenue(state.show.venue, withGround(extentOf(state), state));
+}
+
+/** Where the fall zone is looked at it is in the picture, with the audience line. */
+function withGround({ min, max }: Box, { show, care }: StudioState): Box {
+	if (!care?.fallZone || !show) return { min, max };
+	const { audience } = show.venue;
+	const corners = [...care.fallZone.outline, ...(audience ? [audience.from, audience.to] : [])];
+	const [xs, ys] = [corners.map(([x]) => x), corners.map(([, y]) => y)];
+	return {
+		min: [Math.min(min[0], ...xs), Math.min(min[1], ...ys), min[2]],
+		// Room for the label at the top, under the row of views.
+		max: [Math.max(max[0], ...xs), Math.max(max[1], ...ys) + 12, max[2]],
+	};
 }
 
 /** All slots of all formations, down to the ground; without any, the flight volume. */

@@ -148,6 +148,7 @@ export function listActions(parts: ActionParts): Action[] {
 		},
 		{ id: "detail", name: "Detail", keys: "Shift+1", theme: "View", run: page("detail") },
 		{ id: "verdicts", name: "Verdicts", keys: "Shift+2", theme: "View", available: hasShow, run: page("verdicts") },
+		{ id: "care", name: "Care", keys: "Shift+6", theme: "View", available: hasShow, run: page("care") },
 		{
 			id: "formations",
 			name: "Formations",

@@ -7,6 +7,7 @@ import { StudioContext } from "./studio-context.ts";
 import "./styles/tokens.css";
 import "./styles/page.css";
 import "./styles/spread.css";
+import "./styles/care.css";
 import "./styles/margin.css";
 import "./styles/floating.css";
 import { FrameContext } from "./use-frame.ts";

@@ -82,6 +82,21 @@ describe("the studio, driven whole without a browser", () => {
 		expect(fake.told.span[0]).toBe(state().flight!.begins);
 	});
 
+	it("works out falls, wakes and lag after the proof, and again where the wind changes, which changes no verdict", async () => {
+		const calm = state().care!.fallZone!;
+		expect(state().care!.asFlown.legs).toHaveLength(transitions().length);
+		const undone = state().undo;
+		expect(studio.commands.setVenue({ wind: 9 })).toBe(true);
+		expect(state().unchecked.size).toBe(0);
+		await studio.settled();
+		expect(state().check!.flies).toBe(true);
+		expect(state().care!.fallZone!.farthest.distance).toBeGreaterThan(calm.farthest.distance + 5);
+		studio.commands.undo();
+		await studio.settled();
+		expect(state().undo).toBe(undone);
+		expect(state().care!.fallZone).toEqual(calm);
+	});
+
 	it("compares needed with available time at once while a transition is dragged, and says too fast", async () => {
 		const cue = transitions()[0];
 		const before = checkOf(cue.id);

@@ -50,7 +50,14 @@ describe("access", () => {
 		await page.keyboard.press("Enter");
 		await page.getByText(/^(\d+) of \1 fly$/).waitFor({ timeout: 60_000 });
 		await page.locator("body").click({ position: { x: 2, y: 2 } });
-		for (const key of ["Shift+Digit1", "Shift+Digit2", "Shift+Digit3", "Shift+Digit4", "Shift+Digit5"]) {
+		for (const key of [
+			"Shift+Digit1",
+			"Shift+Digit2",
+			"Shift+Digit3",
+			"Shift+Digit4",
+			"Shift+Digit5",
+			"Shift+Digit6",
+		]) {
 			await page.keyboard.press(key);
 			expect(await findBarriers(page), key).toEqual([]);
 		}

@@ -3,10 +3,13 @@ import { type ReactNode, useEffect, useId, useState } from "react";
 /** A label over a field. */
 export function Field({
 	label,
+	help,
 	children,
 	wide,
 }: {
 	label: string;
+	/** One sentence under the field; the field is to be described by `${id}-help`. */
+	help?: string;
 	children: (id: string) => ReactNode;
 	wide?: boolean;
 }) {
@@ -15,6 +18,11 @@ export function Field({
 		<div className={wide ? "field wide" : "field"}>
 			<label htmlFor={id}>{label}</label>
 			{children(id)}
+			{help && (
+				<span id={`${id}-help`} className="help">
+					{help}
+				</span>
+			)}
 		</div>
 	);
 }
@@ -59,17 +67,20 @@ interface NumberFieldProps {
 	value: number;
 	/** Written behind the number. */
 	unit?: string;
+	/** One sentence under the field. */
+	help?: string;
 	disabled?: boolean;
 	step?: number;
 	onSet: (value: number) => boolean;
 }
 
 /** A number with its unit in the label; arrow keys step it. */
-export function NumberField({ label, value, unit, disabled, step = 1, onSet }: NumberFieldProps) {
+export function NumberField({ label, value, unit, help, disabled, step = 1, onSet }: NumberFieldProps) {
 	const shown = String(Math.round(value * 10000) / 10000);
 	return (
 		<SteppedField
 			label={unit ? `${label}, ${unit}` : label}
+			help={help}
 			value={shown}
 			disabled={disabled}
 			step={(text, direction) => String(Math.round((Number(text) + direction * step) * 10000) / 10000)}
@@ -82,23 +93,25 @@ export function NumberField({ label, value, unit, disabled, step = 1, onSet }: N
 }
 
 interface SteppedFieldProps extends TextFieldProps {
+	help?: string;
 	/** The text one step up (1) or down (−1). */
 	step: (text: string, direction: 1 | -1) => string;
 }
 
-export function SteppedField({ label, value, disabled, onSet, step }: SteppedFieldProps) {
+export function SteppedField({ label, value, help, disabled, onSet, step }: SteppedFieldProps) {
 	const [text, setText] = useState(value);
 	useEffect(() => setText(value), [value]);
 	const take = (next: string) => {
 		if (next !== value && !onSet(next)) setText(value);
 	};
 	return (
-		<Field label={label}>
+		<Field label={label} help={help}>
 			{(id) => (
 				<input
 					id={id}
 					value={text}
 					inputMode="decimal"
+					aria-describedby={help ? `${id}-help` : undefined}
 					disabled={disabled}
 					onChange={(event) => setText(event.target.value)}
 					onBlur={() => take(text)}

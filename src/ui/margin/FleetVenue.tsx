@@ -2,6 +2,8 @@ import type { Limits } from "../../core/show/index.ts";
 import { NumberField } from "../fields/Field.tsx";
 import { PointFields } from "../fields/PointFields.tsx";
 import { useStudio, useStudioState } from "../studio-context.ts";
+import { AirFields } from "./AirFields.tsx";
+import { AudienceFields } from "./AudienceFields.tsx";
 import { Cautions } from "./Margin.tsx";
 
 const LIMITS: readonly {
@@ -115,6 +117,8 @@ export function FleetVenue() {
 					onSet={(seat) => commands.setVenue({ seat })}
 				/>
 			</div>
+			<AudienceFields venue={venue} />
+			<AirFields fleet={fleet} venue={venue} />
 			<Cautions />
 		</>
 	);

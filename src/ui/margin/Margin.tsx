@@ -1,6 +1,7 @@
 import { useStore } from "zustand";
 import { desk, type MarginPage } from "../desk.ts";
 import { useStudioState } from "../studio-context.ts";
+import { Care } from "./Care.tsx";
 import { Detail } from "./Detail.tsx";
 import { FleetVenue } from "./FleetVenue.tsx";
 import { Formations } from "./Formations.tsx";
@@ -10,6 +11,7 @@ import { Verdicts } from "./Verdicts.tsx";
 const PAGES: readonly { readonly page: MarginPage; readonly name: string }[] = [
 	{ page: "detail", name: "Detail" },
 	{ page: "verdicts", name: "Verdicts" },
+	{ page: "care", name: "Care" },
 	{ page: "formations", name: "Formations" },
 	{ page: "fleet-venue", name: "Fleet & venue" },
 	{ page: "hand-off", name: "Hand-off" },
@@ -44,6 +46,7 @@ export function Margin() {
 			<div className="note">
 				{page === "detail" && <Detail />}
 				{page === "verdicts" && <Verdicts />}
+				{page === "care" && <Care />}
 				{page === "formations" && <Formations />}
 				{page === "fleet-venue" && <FleetVenue />}
 				{page === "hand-off" && <HandOff />}

@@ -1,3 +1,4 @@
+import { sayCare } from "../../core/flight/index.ts";
 import { desk } from "../desk.ts";
 import { TextField } from "../fields/Field.tsx";
 import { saySeconds, sayTime } from "../say-place.ts";
@@ -12,9 +13,11 @@ export function Overview() {
 	const soundNotes = useStudioState((state) => state.soundNotes);
 	const audioReady = useStudioState((state) => state.audioReady);
 	const check = useStudioState((state) => state.check);
+	const care = useStudioState((state) => state.care);
 	const busy = useStudioState((state) => state.jobs.length > 0);
 	const readOnly = useStudioState((state) => state.readOnly !== null);
 	if (!show) return null;
+	const matters = care ? sayCare(show, care).filter(({ attention }) => attention) : [];
 	const noCues = show.cues.order.length === 0;
 	return (
 		<>
@@ -38,6 +41,12 @@ export function Overview() {
 					{note}
 				</p>
 			))}
+			{matters.length > 0 && (
+				<p>
+					Beside the proof, {sayList(matters.map(({ heading }) => heading.toLowerCase()))}{" "}
+					{matters.length === 1 ? "needs" : "need"} attention: see Care.
+				</p>
+			)}
 			{noCues && analysis && (
 				<p>
 					Next: let Starstave make a rough cut from the music and work it over, or draw formations and put in cues by
@@ -53,6 +62,11 @@ export function Overview() {
 						onClick={() => desk.setState({ asksRoughCut: true })}
 					>
 						Make a rough cut …
+					</button>
+				)}
+				{matters.length > 0 && (
+					<button type="button" onClick={() => desk.setState({ margin: "care" })}>
+						See Care
 					</button>
 				)}
 				<button type="button" onClick={() => desk.setState({ margin: "formations" })}>
@@ -72,6 +86,11 @@ export function Overview() {
 			<Cautions />
 		</>
 	);
+}
+
+/** "a, b and c" */
+function sayList(items: readonly string[]): string {
+	return items.length < 2 ? items.join("") : `${items.slice(0, -1).join(", ")} and ${items.at(-1)}`;
 }
 
 function sayConfidence(confidence: number): string {

@@ -64,7 +64,7 @@ describe("the report", () => {
 	});
 
 	it("says what needs attention first, and the whole show in sentences with what they rest on", () => {
-		const [before, after] = page.split("The show as a whole");
+		const [before, after] = page.replaceAll("\u00a0", " ").split("The show as a whole");
 		expect(before).toContain("Needs attention");
 		expect(before).toContain("Fall zone: A drone that loses power comes down as far as 48 m");
 		expect(before).not.toContain("Impact energy:");

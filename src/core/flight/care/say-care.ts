@@ -19,12 +19,22 @@ export interface CareTopic {
 /** What was found, with what it rests on; nothing in it is a permission. Drones count from 1. */
 export function sayCare(show: Show, care: Care): CareTopic[] {
 	const { fallZone, airtime } = care;
-	return [
+	const topics = [
 		...(fallZone === null ? [] : [sayFallZone(show, fallZone), sayImpact(show, fallZone)]),
 		sayWake(show, care),
 		sayAsFlown(show, care.asFlown),
 		...(airtime === null ? [] : [sayAirtime(airtime)]),
 	];
+	return topics.map((topic) => ({
+		...topic,
+		sentences: topic.sentences.map(keepUnits),
+		assumptions: topic.assumptions.map(keepUnits),
+	}));
+}
+
+/** No line may end between a number and its unit. */
+function keepUnits(sentence: string): string {
+	return sentence.replace(/(\d) (?=(?:m|s|ms|m\/s|J|kg|Hz|%)(?![\p{L}\d]))/gu, "$1\u00a0");
 }
 
 const SIDES: Readonly<Record<BorderSide, string>> = {
