@@ -55,6 +55,7 @@ function isAnalysis(value: unknown): value is Analysis {
 export async function takeSound(bench: Workbench, file: NamedBytes, heard: Heard): Promise<void> {
 	const { store, keeper, parts } = bench;
 	bench.soundtrack = file;
+	bench.heardHash = heard.soundtrack.sha256;
 	await parts.player.load(heard.samples);
 	setClicks(bench);
 	store.setState({
@@ -89,6 +90,8 @@ export async function replaceShow(
 	parts.files.forgetPlace();
 	await parts.player.load(null);
 	bench.soundtrack = null;
+	bench.heardHash = null;
+	bench.sounds.clear();
 	notices.dismiss("edit");
 	notices.dismiss("feasibility");
 	feasibility.reset();
@@ -99,6 +102,8 @@ export async function replaceShow(
 		audioReady: false,
 		soundNotes: [],
 		analysis: null,
+		newEdit: null,
+		afterEdit: null,
 		selection: { kind: "nothing" },
 	});
 	setClicks(bench);

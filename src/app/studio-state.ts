@@ -3,6 +3,7 @@ import type { Flash, LightProgram } from "../core/light/index.ts";
 import type { Analysis } from "../core/music/index.ts";
 import type { FleetSlots, Show } from "../core/show/index.ts";
 import type { PlayerState } from "../platform/player.ts";
+import type { AfterEdit, NewEdit } from "./new-edit.ts";
 
 /** Work under way that takes longer than a blink. */
 export interface Job {
@@ -72,6 +73,10 @@ export interface StudioState {
 	readonly unchecked: ReadonlySet<string>;
 	/** The part of the show that is being looked into; null: none. */
 	readonly inquired: Inquired | null;
+	/** A new edit of the soundtrack that is being looked at; null: none. */
+	readonly newEdit: NewEdit | null;
+	/** What the last new edit that was taken over has come to, as long as it stands; null: none. */
+	readonly afterEdit: AfterEdit | null;
 	/** The part of playing that doesn't change with every frame; where the ear is, says `player.heardAt`. */
 	readonly playback: PlayerState;
 	readonly selection: Selection;

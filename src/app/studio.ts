@@ -6,12 +6,14 @@ import { deskCommands } from "./commands/desk-commands.ts";
 import { documentCommands } from "./commands/document-commands.ts";
 import { formationCommands } from "./commands/formation-commands.ts";
 import { gridCommands } from "./commands/grid-commands.ts";
+import { newEditCommands } from "./commands/new-edit-commands.ts";
 import { showCommands } from "./commands/show-commands.ts";
 import { beginCueDrag, beginDrag } from "./drag.ts";
 import { createFeasibility } from "./feasibility.ts";
 import { createInquiry } from "./inquiry.ts";
 import { createJobLedger } from "./job-ledger.ts";
 import { createKeeper } from "./keeper.ts";
+import { createNewEdits } from "./new-edit.ts";
 import { createNotices } from "./notices.ts";
 import { setClicks } from "./open-show.ts";
 import type { StudioParts } from "./parts.ts";
@@ -56,6 +58,8 @@ export function createStudio(parts: StudioParts): Studio {
 		flashes: [],
 		unchecked: new Set(),
 		inquired: null,
+		newEdit: null,
+		afterEdit: null,
 		playback: parts.player.state,
 		selection: { kind: "nothing" },
 		jobs: [],
@@ -71,10 +75,13 @@ export function createStudio(parts: StudioParts): Studio {
 	const inquiry = createInquiry({ store, workers, ledger, notices });
 	const bench = createWorkbench({ parts, store, notices, ledger, keeper, feasibility, inquiry });
 
+	const edits = createNewEdits(bench);
+
 	const unsubscribe = [
 		player.subscribe((playback) => store.setState({ playback })),
 		store.subscribe((state, before) => {
-			if (state.show?.grid !== before.show?.grid) setClicks(bench);
+			if (state.show?.grid !== before.show?.grid && state.newEdit?.hears !== "new") setClicks(bench);
+			if (state.show !== before.show) edits.follow(state.show, before.show);
 		}),
 	];
 	const commands: Commands = {
@@ -84,6 +91,7 @@ export function createStudio(parts: StudioParts): Studio {
 		...documentCommands(bench),
 		...gridCommands(bench),
 		...deskCommands(bench),
+		...newEditCommands(bench, edits),
 	};
 
 	return {

@@ -8,6 +8,7 @@ import { createHistory, type History } from "./history.ts";
 import type { Inquiry } from "./inquiry.ts";
 import type { JobLedger } from "./job-ledger.ts";
 import type { Keeper } from "./keeper.ts";
+import type { KnownSound } from "./new-edit.ts";
 import type { Notices } from "./notices.ts";
 import type { StudioParts } from "./parts.ts";
 import type { Selection, StudioState } from "./studio-state.ts";
@@ -24,6 +25,10 @@ export interface Workbench {
 	readonly inquiry: Inquiry;
 	/** The soundtrack's file as the client gave it. */
 	soundtrack: NamedBytes | null;
+	/** Hash of the soundtrack that is heard and looked at; null: none. */
+	heardHash: string | null;
+	/** Soundtracks that undo may ask for again, by hash. */
+	readonly sounds: Map<string, KnownSound>;
 	/** This tab's leave to write; null until it has asked. */
 	lease: Lease | null;
 	/** Ends a drag that is under way, as if it were let go of; an edit from elsewhere must not be lost in it. */
@@ -51,6 +56,8 @@ export function createWorkbench(built: Built): Workbench {
 		...built,
 		history,
 		soundtrack: null,
+		heardHash: null,
+		sounds: new Map(),
 		lease: null,
 		endDrag: () => {},
 		mayEdit: () => {

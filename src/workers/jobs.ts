@@ -15,6 +15,7 @@ import type {
 import type { HandoffOptions } from "../core/handoff/index.ts";
 import type { Flash } from "../core/light/index.ts";
 import type { Analysis } from "../core/music/index.ts";
+import type { AnchorPair, EditMap } from "../core/retime/index.ts";
 import {
 	type Curve,
 	createBeatMap,
@@ -210,6 +211,22 @@ async function traces(ask: { readonly legs: readonly Leg[]; readonly limits: Lim
 	return traceLegs(ask.legs, ask.limits);
 }
 
+export interface MapAsk {
+	readonly old: Samples;
+	readonly current: Samples;
+	/** Places that the designer says are the same. */
+	readonly anchors: readonly AnchorPair[];
+	/** Old seconds of beats and of bars' first beats. */
+	readonly beats: readonly number[];
+	readonly downbeats: readonly number[];
+}
+
+/** Which stretch of the old soundtrack became which of the new one. */
+async function mapEdit({ old, current, anchors, beats, downbeats }: MapAsk, report: Report): Promise<EditMap> {
+	const retime = await import("../core/retime/index.ts");
+	return retime.mapEdit(old, current, { anchors, beats, downbeats, onProgress: report });
+}
+
 export interface DraftAsk {
 	readonly analysis: Analysis;
 	readonly soundtrack: Soundtrack;
@@ -292,6 +309,7 @@ export const jobs = {
 	care,
 	remedies,
 	traces,
+	mapEdit,
 	draft,
 	handoff,
 	read,

@@ -1,4 +1,5 @@
 import type { Remedy } from "../../core/flight/index.ts";
+import type { AnchorPair, RetimeChoices } from "../../core/retime/index.ts";
 import type {
 	CueChange,
 	DraftShow,
@@ -127,7 +128,36 @@ export interface DeskCommands {
 	setClick(on: boolean): void;
 }
 
-export type Commands = ShowCommands & CueCommands & FormationCommands & DocumentCommands & GridCommands & DeskCommands;
+export interface NewEditCommands {
+	/** Another edit of the soundtrack: finds what went where, into `newEdit`. The show stays as it is. */
+	openNewEdit(file: File): Promise<boolean>;
+	/** Moves an edge of a stretch that carries old music. @param seconds in the new soundtrack */
+	moveEditEdge(index: number, edge: "start" | "end", seconds: number): boolean;
+	/** Two places that are the same in the music; everything else is found anew around them. */
+	setEditAnchor(pair: AnchorPair): Promise<boolean>;
+	takeBackCorrection(): boolean;
+	chooseInEdit(change: Partial<RetimeChoices>): void;
+	/** Plays the old or the new soundtrack, at the same place in the music. */
+	hearEdit(to: "old" | "new"): Promise<void>;
+	/** The whole retime as one step of undo. */
+	acceptNewEdit(): Promise<boolean>;
+	dropNewEdit(): Promise<void>;
+	/** Every cue with its old and new place, as a CSV file. */
+	saveEditTable(): void;
+	putCueInTray(id: string): boolean;
+	/** To the beat under the ear. @returns the cue's id; null where it was refused */
+	putBackFromTray(index: number): string | null;
+	doneReviewing(id: string): boolean;
+	goToCue(id: string): void;
+}
+
+export type Commands = ShowCommands &
+	CueCommands &
+	FormationCommands &
+	DocumentCommands &
+	GridCommands &
+	DeskCommands &
+	NewEditCommands;
 
 /** One drag, one step of undo. Each update starts from the show as it was when the drag began. */
 export interface Drag {

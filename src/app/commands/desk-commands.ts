@@ -1,3 +1,4 @@
+import { followSoundtrack } from "../new-edit.ts";
 import type { Workbench } from "../workbench.ts";
 import type { DeskCommands } from "./command-types.ts";
 
@@ -5,6 +6,12 @@ import type { DeskCommands } from "./command-types.ts";
 export function deskCommands(bench: Workbench): DeskCommands {
 	const { store, notices, ledger } = bench;
 	const { player } = bench.parts;
+	/** Undo may bring back a show with another soundtrack: the sound follows. */
+	const walk = (direction: "undo" | "redo"): boolean => {
+		const walked = bench.walk(direction);
+		if (walked) void followSoundtrack(bench).catch((error) => notices.sayError(error));
+		return walked;
+	};
 	return {
 		select: (selection) => store.setState({ selection }),
 		selectCue: (id, add = false) => {
@@ -13,8 +20,8 @@ export function deskCommands(bench: Workbench): DeskCommands {
 			const ids = held.includes(id) ? held.filter((other) => other !== id) : [...held, id];
 			store.setState({ selection: ids.length > 0 ? { kind: "cues", ids } : { kind: "nothing" } });
 		},
-		undo: () => bench.walk("undo"),
-		redo: () => bench.walk("redo"),
+		undo: () => walk("undo"),
+		redo: () => walk("redo"),
 		lookInto: (part) => bench.inquiry.lookInto(part),
 		dismissNotice: (id) => notices.dismiss(id),
 		cancelJob: (id) => ledger.cancel(id),

@@ -5,6 +5,7 @@ export type { PathRates, TableFile } from "./flight-paths.ts";
 export { type Handoff, type HandoffInput, type HandoffOptions, handOff } from "./hand-off.ts";
 export { type HandoffFile, type ListedFile, listFile } from "./manifest.ts";
 export { type ReportInput, writeReport } from "./report.ts";
+export { retimeCsv } from "./retime-csv.ts";
 export { revisionCode } from "./revision.ts";
 export {
 	DEFAULT_TIMECODE,

@@ -18,8 +18,7 @@ export {
 	type CueMove,
 	type CueOffer,
 	type HeardMusic,
-	type RetimedShow,
 	type RetimeResult,
 	retimeShow,
-	type TrayCue,
 } from "./retime-show.ts";
+export { type RetimeChoices, settleRetime } from "./settle.ts";

@@ -9,6 +9,7 @@ import {
 	cueTimes,
 	type Show,
 	type Soundtrack,
+	type TrayCue,
 	toOrdered,
 } from "../show/index.ts";
 import { type CarriedTimes, carryCue } from "./carry-cue.ts";
@@ -44,23 +45,8 @@ export interface CueOffer {
 	readonly reason: string;
 }
 
-/** A cue in the tray: kept in the show under `orphans`. */
-export interface TrayCue {
-	readonly cue: Cue;
-	/** Seconds in the soundtrack that it was made for, and that soundtrack's SHA-256 ("" where it had none). */
-	readonly time: number;
-	readonly soundtrack: string;
-}
-
-/** A show that came from another edit of its soundtrack. Both keys are kept in its file. */
-export interface RetimedShow extends Show {
-	/** The soundtrack that the show was retimed from. */
-	readonly retimedFrom?: Soundtrack;
-	readonly orphans?: readonly TrayCue[];
-}
-
 export interface RetimeResult {
-	readonly show: RetimedShow;
+	readonly show: Show;
 	/** One for every cue of the old show, in its order. */
 	readonly cues: readonly CueMove[];
 	readonly offers: readonly CueOffer[];
@@ -82,7 +68,7 @@ export interface HeardMusic extends HeardGrid {
  * @param heard analysis of the new soundtrack; left out, the grid goes on at its own tempo where music was put in
  * @returns a new show; the old one is untouched. Where the map says "different", the show itself, nothing moved
  */
-export function retimeShow(show: RetimedShow, map: EditMap, soundtrack: Soundtrack, heard?: HeardMusic): RetimeResult {
+export function retimeShow(show: Show, map: EditMap, soundtrack: Soundtrack, heard?: HeardMusic): RetimeResult {
 	const oldBeats = createBeatMap(show.grid);
 	const tray = show.orphans ?? [];
 	if (map.verdict === "different") return nothingMoved(show, map, oldBeats, tray);
@@ -112,7 +98,7 @@ export function retimeShow(show: RetimedShow, map: EditMap, soundtrack: Soundtra
 		for (const place of times.again) offers.push(offerAgain(cue, place, end - start, placer));
 	}
 	const { soundtrack: old, ...rest } = show;
-	const next: RetimedShow = {
+	const next: Show = {
 		...rest,
 		soundtrack,
 		grid: carried.grid,
@@ -125,7 +111,7 @@ export function retimeShow(show: RetimedShow, map: EditMap, soundtrack: Soundtra
 	return { show: next, cues: moves, offers, orphans: [...tray, ...orphans], needsReview, notes: map.notes };
 }
 
-function nothingMoved(show: RetimedShow, map: EditMap, oldBeats: BeatMap, tray: readonly TrayCue[]): RetimeResult {
+function nothingMoved(show: Show, map: EditMap, oldBeats: BeatMap, tray: readonly TrayCue[]): RetimeResult {
 	const cues = show.cues.order.map((id): CueMove => {
 		const cue = show.cues.byId[id];
 		const { start } = cueTimes(cue, oldBeats);

@@ -22,6 +22,8 @@ export {
 	type ShowFile,
 	type Soundtrack,
 	showFile,
+	type ToReview,
+	type TrayCue,
 } from "./schema/show-file.ts";
 export type { Grid, Ordered, Show } from "./show.ts";
 export { slotCount } from "./slot-count.ts";

@@ -1,7 +1,7 @@
 import type { Cue } from "./schema/cue.ts";
 import type { Fleet, Takeoff, Venue } from "./schema/fleet-venue.ts";
 import type { Formation } from "./schema/shape.ts";
-import type { Bar, DroneGroup, Section, Soundtrack } from "./schema/show-file.ts";
+import type { Bar, DroneGroup, Section, Soundtrack, ToReview, TrayCue } from "./schema/show-file.ts";
 
 /** Things with an id, in an order: what the file holds as an array. Edits of one thing make one patch. */
 export interface Ordered<T> {
@@ -33,4 +33,10 @@ export interface Show {
 	readonly formations: Ordered<Formation>;
 	readonly groups: Ordered<DroneGroup>;
 	readonly cues: Ordered<Cue>;
+	/** The tray: cues whose music is gone, kept until they are put back. */
+	readonly orphans?: readonly TrayCue[] | undefined;
+	/** Cues that somebody should look at after a retime. */
+	readonly review?: readonly ToReview[] | undefined;
+	/** The soundtrack that this one is a new edit of. */
+	readonly retimedFrom?: Soundtrack | undefined;
 }

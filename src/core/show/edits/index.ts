@@ -34,3 +34,4 @@ export {
 	setSections,
 	splitSection,
 } from "./section-edits.ts";
+export { doneReviewing, putBack, putInTray } from "./tray-edits.ts";

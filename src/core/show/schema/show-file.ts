@@ -30,6 +30,15 @@ export const section = v.looseObject({
 	from: number,
 	to: number,
 });
+/** A cue that waits in the tray: its music is gone from the soundtrack, or it was taken out of the show for now. */
+export const trayCue = v.looseObject({
+	cue,
+	/** Seconds in the soundtrack that it was made for, and that soundtrack's SHA-256 ("" where it had none). */
+	time: number,
+	soundtrack: v.optional(text, ""),
+});
+/** A cue that somebody should look at, and why. */
+export const toReview = v.looseObject({ cue: id, reason: text });
 export const group = v.looseObject({ id, name: text, drones: v.array(whole(0, 20000)) });
 
 /** The whole document as it stands in `*.starstave.json`. */
@@ -49,6 +58,11 @@ export const showFile = v.looseObject({
 	formations: v.optional(v.array(formation), []),
 	groups: v.optional(v.array(group), []),
 	cues: v.optional(v.array(cue), []),
+	/** The tray. */
+	orphans: v.optional(v.array(trayCue)),
+	review: v.optional(v.array(toReview)),
+	/** The soundtrack that this one is a new edit of. */
+	retimedFrom: v.optional(soundtrack),
 });
 
 export type Soundtrack = v.InferOutput<typeof soundtrack>;
@@ -56,4 +70,6 @@ export type Bar = v.InferOutput<typeof bar>;
 export type GridFile = v.InferOutput<typeof grid>;
 export type Section = v.InferOutput<typeof section>;
 export type DroneGroup = v.InferOutput<typeof group>;
+export type TrayCue = v.InferOutput<typeof trayCue>;
+export type ToReview = v.InferOutput<typeof toReview>;
 export type ShowFile = v.InferOutput<typeof showFile>;
