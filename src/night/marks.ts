@@ -13,10 +13,13 @@ export interface NightMarks {
 	readonly troubled: readonly number[];
 	/** What lies on the ground; null where it isn't looked at. */
 	readonly ground: GroundMarks | null;
+	/** 3·M metres: slots of a picture that could be, as small rings; null: none. */
+	readonly ghost: Float64Array | null;
 }
 
 const TROUBLE = "#ff6a4d";
 const INK = "#efe7d6";
+const FLIGHT = "#6fd0c6";
 
 /** Draws the marks over the sky. Sizes in CSS pixels times `ratio`. */
 export function drawMarks(
@@ -42,6 +45,7 @@ export function drawMarks(
 		pen.lineTo(point.x + 6 * ratio, point.y + 4 * ratio);
 	}
 	pen.stroke();
+	if (marks.ghost) drawGhost(pen, camera, marks.ghost, width, height, ratio);
 	if (!marks.pair) return;
 	const a = at(marks.pair.drones[0]);
 	const b = at(marks.pair.drones[1]);
@@ -63,4 +67,24 @@ export function drawMarks(
 	const label = `${marks.pair.distance.toFixed(2)} m`;
 	const x = Math.min(Math.max(a.x, b.x) + 8 * ratio, width - pen.measureText(label).width - 6 * ratio);
 	pen.fillText(label, x, Math.max(a.y, b.y) + 16 * ratio);
+}
+
+function drawGhost(
+	pen: CanvasRenderingContext2D,
+	camera: Camera,
+	ghost: Float64Array,
+	width: number,
+	height: number,
+	ratio: number,
+): void {
+	pen.strokeStyle = FLIGHT;
+	pen.lineWidth = ratio;
+	pen.beginPath();
+	for (let k = 0; k < ghost.length; k += 3) {
+		const point = projectPoint(camera, ghost[k]!, ghost[k + 1]!, ghost[k + 2]!, width, height);
+		if (!point) continue;
+		pen.moveTo(point.x + 3 * ratio, point.y);
+		pen.arc(point.x, point.y, 3 * ratio, 0, 2 * Math.PI);
+	}
+	pen.stroke();
 }

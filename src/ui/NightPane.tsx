@@ -83,7 +83,7 @@ export function NightPane() {
 			view.current.draw({
 				positions,
 				colours,
-				marks: marksAt(state, seconds, positions, desk.getState().viewpoint),
+				marks: { ...marksAt(state, seconds, positions, desk.getState().viewpoint), ghost: desk.getState().ghost },
 				showUnlit: desk.getState().showUnlit,
 			});
 		},

@@ -11,6 +11,8 @@ export interface Desk {
 	readonly showUnlit: boolean;
 	/** Null: page view; else the strip's window in beats. */
 	readonly strip: { readonly from: number; readonly to: number } | null;
+	/** 3·M metres: slots that a remedy would have, shown in the night view while it is pointed at; null: none. */
+	readonly ghost: Float64Array | null;
 	readonly finder: boolean;
 	/** The rough cut's question is open. */
 	readonly asksRoughCut: boolean;
@@ -22,6 +24,7 @@ export const desk = createStore<Desk>(() => ({
 	viewpoint: "audience",
 	showUnlit: true,
 	strip: null,
+	ghost: null,
 	finder: false,
 	asksRoughCut: false,
 	keysShown: false,

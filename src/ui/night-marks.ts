@@ -1,10 +1,9 @@
 import type { StudioState } from "../app/index.ts";
-import { dronePositions } from "../core/flight/index.ts";
+import { createMotion, limitShare, motionAt } from "../core/flight/index.ts";
+import { GAP_TOLERANCE, LIMIT_TOLERANCE } from "../core/units/index.ts";
 import type { GroundMarks, NightMarks, NightViewpoint } from "../night/index.ts";
 
 const NONE = { pair: null, troubled: [] } as const;
-/** Seconds between the two instants that a speed is taken from. */
-const STEP = 0.02;
 
 /** What is marked at this instant; outlines on the ground are for the view from above. */
 export function marksAt(
@@ -12,7 +11,7 @@ export function marksAt(
 	seconds: number,
 	positions: Float32Array,
 	viewpoint: NightViewpoint,
-): NightMarks {
+): Omit<NightMarks, "ghost"> {
 	return { ...flightMarks(state, seconds, positions), ground: viewpoint === "plan" ? groundMarks(state) : null };
 }
 
@@ -36,25 +35,34 @@ function groundMarks({ show, care }: StudioState): GroundMarks | null {
 	};
 }
 
-/** The closest pair of the selected transition while it is flown, and the drones that are too fast at this instant. */
-function flightMarks(state: StudioState, seconds: number, positions: Float32Array): Omit<NightMarks, "ground"> {
-	const { selection, check, flight, show } = state;
-	if (selection.kind !== "cues" || selection.ids.length !== 1 || !check || !flight || !show) return NONE;
-	const transition = check.transitions.find((one) => one.id === selection.ids[0]);
-	if (!transition || seconds < transition.departs.time || seconds > transition.arrives.time) return NONE;
+/**
+ * The closest pair of the leg that is selected or looked into while it is flown, the drones over one of their limits at
+ * this instant, and the one that leaves the venue.
+ */
+function flightMarks(
+	state: StudioState,
+	seconds: number,
+	positions: Float32Array,
+): Pick<NightMarks, "pair" | "troubled"> {
+	const { selection, inquired, check, flight, show } = state;
+	if (!check || !flight || !show || (selection.kind === "cues" && selection.ids.length > 1)) return NONE;
+	const id = inquired?.part.kind === "leg" ? inquired.part.id : selection.kind === "cues" ? selection.ids[0] : null;
+	const leg = [check.launch, ...check.transitions, check.landing].find((one) => one?.id === id);
+	if (!leg || seconds < leg.departs.time || seconds > leg.arrives.time) return NONE;
 	const { limits } = show.fleet;
 	const troubled: number[] = [];
-	if (transition.verdicts.includes("too-fast")) {
-		const later = new Float32Array(positions.length);
-		dronePositions(flight, seconds + STEP, later);
+	const flown = flight.legs.findLast((one) => one.id === id && one.departs <= seconds);
+	if (leg.verdicts.includes("too-fast") && flown !== undefined) {
+		const motion = createMotion(flight.drones);
+		motionAt(flown, seconds, motion);
 		for (let drone = 0; drone < flight.drones; drone++) {
-			const [dx, dy, dz] = [0, 1, 2].map((axis) => (later[3 * drone + axis] - positions[3 * drone + axis]) / STEP);
-			if (Math.hypot(dx, dy) > limits.horizontal || dz > limits.climb || -dz > limits.descent) troubled.push(drone);
+			if (limitShare(motion, drone, limits) > 1 + LIMIT_TOLERANCE) troubled.push(drone);
 		}
 	}
-	if (!transition.gap) return { pair: null, troubled };
-	const [a, b] = transition.gap.drones;
+	if (leg.breach !== null && !troubled.includes(leg.breach.drone)) troubled.push(leg.breach.drone);
+	if (!leg.gap) return { pair: null, troubled };
+	const [a, b] = leg.gap.drones;
 	const apart = [0, 1, 2].map((axis) => positions[3 * a + axis] - positions[3 * b + axis]);
 	const distance = Math.hypot(apart[0], apart[1], apart[2] / limits.downwash);
-	return { pair: { drones: [a, b], distance, breaks: distance < limits.spacing - 0.002 }, troubled };
+	return { pair: { drones: [a, b], distance, breaks: distance < limits.spacing - GAP_TOLERANCE }, troubled };
 }

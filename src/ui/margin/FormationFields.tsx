@@ -3,6 +3,9 @@ import type { Formation, Shape } from "../../core/show/index.ts";
 import { ChoiceField, NumberField, TextField } from "../fields/Field.tsx";
 import { PointFields } from "../fields/PointFields.tsx";
 import { useStudio, useStudioState } from "../studio-context.ts";
+import { useLookInto } from "../use-look-into.ts";
+import { Remedies } from "./Remedies.tsx";
+import { sayFormationTrouble } from "./say-trouble.ts";
 import { shapeNumbers } from "./shape-fields.ts";
 
 const STYLES = [
@@ -22,11 +25,21 @@ export function FormationFields({ formation }: { formation: Formation }) {
 				return cue?.kind === "transition" && cue.formation === formation.id;
 			}).length ?? 0,
 	);
+	const verdict = useStudioState((state) => state.check?.formations.find((one) => one.id === formation.id) ?? null);
+	const failing = verdict !== null && !verdict.verdicts.includes("flies");
+	const inquired = useLookInto("formation", failing ? formation.id : null);
+	const show = useStudioState((state) => state.show);
 	const { shape, place } = formation;
 	const set = (next: Shape) => commands.changeFormation(formation.id, { shape: next });
 	return (
 		<section className="formation-fields" aria-label={`Formation ${formation.name || formation.id}`}>
 			<h3>{formation.name || formation.id}</h3>
+			{failing && show && (
+				<>
+					<p className="trouble">The fleet can't stand here: {sayFormationTrouble(verdict, show)}</p>
+					<Remedies own={[]} inquired={inquired} />
+				</>
+			)}
 			<div className="fields">
 				<TextField
 					label="name"

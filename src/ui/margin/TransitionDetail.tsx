@@ -5,7 +5,10 @@ import { PlaceField } from "../fields/PlaceField.tsx";
 import { sayBeats, sayPlace, saySeconds } from "../say-place.ts";
 import { useStudio, useStudioState } from "../studio-context.ts";
 import { useBeatMap } from "../use-frame.ts";
+import { useLookInto } from "../use-look-into.ts";
 import { CueFields } from "./CueFields.tsx";
+import { Remedies } from "./Remedies.tsx";
+import { sayBreach } from "./say-trouble.ts";
 import { VerdictMark } from "./VerdictMark.tsx";
 
 const LIGHT = [
@@ -26,6 +29,8 @@ export function TransitionDetail({ cue }: { cue: TransitionCue }) {
 	const check = useStudioState((state) => state.check?.transitions.find((one) => one.id === cue.id) ?? null);
 	const waiting = useStudioState((state) => state.unchecked.has(cue.id));
 	const readOnly = useStudioState((state) => state.readOnly !== null);
+	const failing = check !== null && !waiting && !check.verdicts.includes("flies");
+	const inquired = useLookInto("leg", failing ? cue.id : null);
 	if (!show) return null;
 	const departs = cuePosition(cue, beatMap);
 	const arrives = departs + cue.length;
@@ -45,6 +50,7 @@ export function TransitionDetail({ cue }: { cue: TransitionCue }) {
 				{sayPlace(departs, beatMap)}. Arrives {sayPlace(arrives, beatMap)}, after {saySeconds(available)}.{" "}
 				<Needs check={check} waiting={waiting} />
 			</p>
+			{check?.breach && <p className="trouble">{sayBreach(check.breach, show)}</p>}
 			{check && <Figures check={check} />}
 			<div className="fields">
 				<PlaceField
@@ -83,21 +89,7 @@ export function TransitionDetail({ cue }: { cue: TransitionCue }) {
 					onSet={(timeLaw) => commands.changeCue(cue.id, { timeLaw })}
 				/>
 			</div>
-			{check && check.remedies.length > 0 && (
-				<ul className="remedies" aria-label="What would make it fly">
-					{check.remedies.map((remedy) => (
-						<li key={remedy.kind + remedy.change}>
-							<span>
-								{remedy.change}
-								<span className="quiet small">{remedy.cost}</span>
-							</span>
-							<button type="button" disabled={readOnly} onClick={() => commands.applyRemedy(remedy)}>
-								Apply
-							</button>
-						</li>
-					))}
-				</ul>
-			)}
+			{failing && check && <Remedies own={check.remedies} inquired={inquired} />}
 			<CueFields cue={cue} />
 		</>
 	);

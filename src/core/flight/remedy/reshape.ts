@@ -12,7 +12,7 @@ import type { TransitionCheck } from "../check.ts";
 import { straightTime } from "../law/straight-time.ts";
 import { scaledMillimetres } from "../measure.ts";
 import { changePlace, type End, endsOf, middleOf, placeEnd } from "./ends.ts";
-import type { Remedy } from "./remedy.ts";
+import type { Remedy, RemedyStep } from "./remedy.ts";
 import { sayOthers, sayTime } from "./say-cost.ts";
 import { isRefused, type Trial, type TrialBase, tryOut } from "./trial.ts";
 
@@ -81,7 +81,7 @@ function follow(base: TrialBase, check: TransitionCheck, way: Way, other: End): 
 	// Where no time is enough, the bound says nothing: a few amounts are planned.
 	const stride = check.needed === null ? Math.max(1, Math.ceil(way.steps / MOST_PLANS)) : 1;
 	for (let k = stride; k <= way.steps && plans < MOST_PLANS; k += stride) {
-		const { place, change, loss, cost } = way.at(k / way.steps);
+		const { place } = way.at(k / way.steps);
 		const moved = fillAt(base, formation, place);
 		const promised = boundAt(moved);
 		const bends = way.kind === "spread" ? bendsLeft(moved, still, limits) : 1;
@@ -96,19 +96,46 @@ function follow(base: TrialBase, check: TransitionCheck, way: Way, other: End): 
 			}
 			continue;
 		}
-		return {
-			remedy: {
-				kind: `${way.kind}-${way.end.which}`,
-				change,
-				cost: [cost, sayOthers(way.end), sayTime(base, trial, check)].filter((part) => part !== "").join(" "),
-				loss,
-				steps,
-				ghost: moved.positions.slice(),
-			},
-			plans: trial.plans,
-		};
+		// The plan may come out shorter than was feared: then less is enough.
+		const less =
+			k > 1 && plans < MOST_PLANS && hasRoom(trial, check) ? tryLess(base, check, way, k, MOST_PLANS - plans) : null;
+		return less ?? toFound(base, check, way, way.at(k / way.steps), steps, trial, moved.positions);
 	}
 	return null;
+}
+
+/** Whether more time is left over than makes it comfortable. */
+function hasRoom(trial: Trial, check: TransitionCheck): boolean {
+	const own = trial.outcomes.get(check.id);
+	return own !== undefined && own.needed < 0.95 * check.available;
+}
+
+/** A step less at a time, as long as it flies. */
+function tryLess(base: TrialBase, check: TransitionCheck, way: Way, from: number, most: number): Found | null {
+	let best: Found | null = null;
+	for (let k = from - 1; k >= 1 && from - k <= most; k--) {
+		const amount = way.at(k / way.steps);
+		const { steps } = placeEnd(base.show, way.end, amount.place);
+		const trial = tryOut(base, steps, [check.id]);
+		if (isRefused(trial)) break;
+		const moved = fillAt(base, base.show.formations.byId[way.end.formation], amount.place);
+		best = toFound(base, check, way, amount, steps, trial, moved.positions);
+	}
+	return best;
+}
+
+function toFound(
+	base: TrialBase,
+	check: TransitionCheck,
+	way: Way,
+	{ change, loss, cost }: ReturnType<Way["at"]>,
+	steps: readonly RemedyStep[],
+	trial: Trial,
+	ghost: Float64Array,
+): Found {
+	const parts = [cost, sayOthers(way.end), sayTime(base, trial, check)].filter((part) => part !== "");
+	const kind = `${way.kind}-${way.end.which}`;
+	return { remedy: { kind, change, cost: parts.join(" "), loss, steps, ghost: ghost.slice() }, plans: trial.plans };
 }
 
 /**

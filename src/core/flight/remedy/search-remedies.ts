@@ -2,9 +2,10 @@ import type { FleetSlots, Show } from "../../show/index.ts";
 import type { ShowCheck } from "../check.ts";
 import type { ShowFlight } from "../show-flight.ts";
 import { goByWay } from "./by-way.ts";
+import { endsOf } from "./ends.ts";
 import { mendFormation } from "./mend-formation.ts";
 import { type Found, type Reshaping, reshape } from "./reshape.ts";
-import { trialBase } from "./trial.ts";
+import { isRefused, type TrialBase, trialBase, tryOut } from "./trial.ts";
 
 /** The ways in space in which remedies are looked for, each a piece of work of its own. */
 export const REMEDY_SEARCHES = ["shrink", "nearer", "turn", "spread", "way"] as const;
@@ -29,7 +30,20 @@ export function searchRemedies(
 	const transition = check.transitions.find((one) => one.id === id);
 	if (transition === undefined || transition.verdicts.includes("flies")) return [];
 	const base = trialBase(show, slots, flight, failingLegs(check));
-	return search === "way" ? goByWay(base, transition) : reshape(base, transition, search satisfies Reshaping);
+	if (search === "way") return goByWay(base, transition);
+	const found = reshape(base, transition, search satisfies Reshaping);
+	// An end in which the fleet can't stand at all is mended first, and only then the flight.
+	return search === "spread" ? [...found, ...mendEnds(base, check, id)] : found;
+}
+
+function mendEnds(base: TrialBase, { formations }: ShowCheck, id: string): Found[] {
+	const ends = endsOf(base.show, id);
+	const bad = [ends?.from.formation, ends?.to.formation].filter((end): end is string =>
+		formations.some((one) => one.id === end && !one.verdicts.includes("flies")),
+	);
+	return bad
+		.flatMap((formation) => mendFormation(base, formation))
+		.filter(({ remedy, plans }) => !isRefused(tryOut(base, remedy.steps, [id], plans)));
 }
 
 /**

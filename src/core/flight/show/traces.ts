@@ -111,6 +111,13 @@ export function limitShare(motion: FleetMotion, drone: number, limits: Limits): 
 	);
 }
 
+/** How much longer than it is flown the drone's motion would have to take at this instant: over 1 it is too fast. */
+function timeShare(motion: FleetMotion, drone: number, limits: Limits): number {
+	const [vx, vy, vz] = motion.velocity.subarray(3 * drone, 3 * drone + 3);
+	const speed = Math.max(Math.hypot(vx, vy) / limits.horizontal, vz / limits.climb, -vz / limits.descent);
+	return Math.max(speed, Math.sqrt(sizeOf(motion.acceleration, drone) / limits.acceleration));
+}
+
 /**
  * @param legs of one id, in the order of time: a transition has one, launch and landing have several
  * @param samples instants, from 2
@@ -172,7 +179,11 @@ function traceOf(values: Float64Array, drones: number, samples: number, share: (
 	return { least, most, worst, drone: worstDrone };
 }
 
-/** The instant at which some drone takes up most of one of its limits, looked for at so many instants. */
+/**
+ * The instant at which some drone takes up most of what it may do, looked for at so many instants. Speed and acceleration
+ * are compared by the time that they ask for (more time lowers an acceleration by its square); jerk, which is at its
+ * limit whenever anything begins, says nothing about where a flight is tight.
+ */
 export function busiestMoment(legs: readonly Leg[], limits: Limits, samples = 61): { time: number; drone: number } {
 	const motion = createMotion(legs[0].rowOfDrone.length);
 	let [most, time, busiest] = [-1, legs[0].departs, 0];
@@ -181,7 +192,7 @@ export function busiestMoment(legs: readonly Leg[], limits: Limits, samples = 61
 			const at = leg.departs + ((leg.arrives - leg.departs) * k) / (samples - 1);
 			motionAt(leg, at, motion);
 			for (let drone = 0; drone < leg.rowOfDrone.length; drone++) {
-				const share = limitShare(motion, drone, limits);
+				const share = timeShare(motion, drone, limits);
 				if (share > most + 1e-9) [most, time, busiest] = [share, at, drone];
 			}
 		}
