@@ -95,11 +95,13 @@ function pairGap(
 			const closest = low > 0 ? low : high < 0 ? -high : 0;
 			const bound = Math.sqrt(level + closest * closest);
 			if (bound >= distance * (1 - NARROW)) continue;
-			if (part.zi[0] > GROUND_HEIGHT && part.zj[0] > GROUND_HEIGHT) {
-				const here = Math.sqrt(level + difference[0] * difference[0]);
+			// Both ends: where two drones close in steadily, the far end is the closest and settles the rest at once.
+			for (const end of [0, LAW_WIDTH - 1]) {
+				if (part.zi[end] <= GROUND_HEIGHT || part.zj[end] <= GROUND_HEIGHT) continue;
+				const here = Math.sqrt(level + difference[end] * difference[end]);
 				if (here < distance) {
 					distance = here;
-					time = part.from;
+					time = end === 0 ? part.from : part.from + part.span;
 				}
 			}
 			if (part.span < 1e-9) {

@@ -7,7 +7,10 @@ import { neededTime } from "../proof/prove-plan.ts";
 import type { Leg, ShowFlight } from "../show-flight.ts";
 import { legProblems, openingOf, timedTransitions } from "./leg-problems.ts";
 
-/** Launch and landing take this much longer than they must: nothing hurries them. */
+/**
+ * Launch and landing take this much longer than they must: nothing hurries them. Legs in waves don't: what parts the
+ * waves is the interval together with the speed, so they are flown at the very speed that they were proven at.
+ */
 const UNHURRIED = 1.15;
 /** Seconds that the fleet stands between launch and the first departure, and before it goes to land. */
 const REST = 2;
@@ -39,8 +42,7 @@ export function assembleFlight(
 		);
 	};
 	const unhurried = (problem: LegProblem, plan: Plan): number => {
-		const moving = plan.shortest * UNHURRIED;
-		return moving + (neededTime(plan, problem) - plan.shortest);
+		return neededTime(plan, problem) * (problem.delays === null ? UNHURRIED : 1);
 	};
 	const timed = timedTransitions(show);
 	const [climb, launch] = problems;
