@@ -20,11 +20,13 @@ import {
 	type Curve,
 	createBeatMap,
 	endOfShow,
+	type Fleet,
 	type FleetSlots,
 	type Limits,
 	type PackedShow,
 	type Show,
 	type Soundtrack,
+	type Venue,
 } from "../core/show/index.ts";
 
 /**
@@ -293,11 +295,21 @@ async function write(ask: PackedShow): Promise<Uint8Array> {
 	return ask.soundtrack === null ? new TextEncoder().encode(writeShow(ask.show)) : packShow(ask);
 }
 
-/** An SVG drawing or points as CSV → what a new formation is made of. */
-async function readShape(ask: { readonly name: string; readonly text: string; readonly count: number }) {
-	const { readPointsCsv, readSvg } = await import("../core/formation/index.ts");
-	const isSvg = ask.text.trimStart().startsWith("<");
-	return isSvg ? { shape: readSvg(ask.text, ask.name, { count: ask.count }) } : readPointsCsv(ask.text, ask.name);
+export interface ReadShapeAsk {
+	/** The file's, and what the formation will be called. */
+	readonly name: string;
+	readonly title: string;
+	readonly text: string;
+	readonly fleet: Pick<Fleet, "count" | "limits">;
+	readonly venue: Venue;
+}
+
+/** An SVG drawing or points as CSV → what a new formation is made of, where the fleet can stand in it. */
+async function readShape({ name, title, text, fleet, venue }: ReadShapeAsk) {
+	const { readPointsCsv, readSvg, settleShape } = await import("../core/formation/index.ts");
+	const isSvg = text.trimStart().startsWith("<");
+	const { shape, ...rest } = isSvg ? { shape: readSvg(text, name, { count: fleet.count }) } : readPointsCsv(text, name);
+	return { ...rest, ...settleShape(shape, fleet.limits, venue, title) };
 }
 
 export const jobs = {

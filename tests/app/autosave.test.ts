@@ -183,6 +183,7 @@ describe("opening", () => {
 		expect(await studio.commands.openFile(new File(["x,y,z\n0,0,10\n3,0,10\n"], "pair.csv"))).toBe(true);
 		const { formations } = studio.store.getState().show!;
 		expect(formations.order.slice(before).map((id) => formations.byId[id].name)).toEqual(["moon", "pair"]);
+		expect(noticesOf(studio).some((text) => /^pair is 3\.0 m wide/.test(text))).toBe(true);
 		studio.commands.undo();
 		studio.commands.undo();
 		expect(studio.store.getState().show!.formations.order.length).toBe(before);

@@ -38,14 +38,16 @@ export async function addFormationFrom(bench: Workbench, file: File): Promise<st
 	if (!bench.mayEdit()) return null;
 	try {
 		const text = await file.text();
-		const { fleet } = store.getState().show!;
-		const made = await ledger.run(
+		const { fleet, venue } = store.getState().show!;
+		const title = file.name.replace(/\.[^.]*$/, "");
+		const { note, ...made } = await ledger.run(
 			`Reading ${file.name}`,
-			(signal) => parts.workers.run("readShape", { name: file.name, text, count: fleet.count }, { signal }),
+			(signal) => parts.workers.run("readShape", { name: file.name, title, text, fleet, venue }, { signal }),
 			{ quiet: true },
 		);
-		const name = file.name.replace(/\.[^.]*$/, "");
-		return add(bench, `Add formation ${name}`, { name, ...made });
+		const id = add(bench, `Add formation ${title}`, { name: title, ...made });
+		if (id !== null) notices.say("done", note, "formation-came-in");
+		return id;
 	} catch (error) {
 		notices.sayError(error);
 		return null;

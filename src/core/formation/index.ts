@@ -6,6 +6,7 @@ export { parsePathData } from "./path-data.ts";
 export { toMillimetre } from "./place.ts";
 export { type PointsFile, readPointsCsv } from "./points-csv.ts";
 export { boxOf, fillFleet, fleetSlotsOf } from "./reserve.ts";
+export { type SettledShape, settleShape } from "./settle.ts";
 export { sizeToSpacing, stretchShape } from "./size.ts";
 export { slotsOf } from "./slots-of.ts";
 export { type Drawing, readSvg } from "./svg.ts";

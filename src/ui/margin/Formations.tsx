@@ -17,7 +17,7 @@ export function Formations() {
 	if (!show) return null;
 	const chosen = selection.kind === "formation" ? show.formations.byId[selection.id] : undefined;
 	const add = (kind: Shape["kind"]) => {
-		const id = commands.addFormation(freshShape(kind, show.fleet.count, show.fleet.limits));
+		const id = commands.addFormation(freshShape(kind, show.fleet, show.venue));
 		if (id) commands.select({ kind: "formation", id });
 	};
 	return (

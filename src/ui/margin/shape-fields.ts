@@ -1,5 +1,5 @@
-import { sizeToSpacing } from "../../core/formation/index.ts";
-import type { Limits, NewFormation, Shape } from "../../core/show/index.ts";
+import { settleShape } from "../../core/formation/index.ts";
+import type { Fleet, NewFormation, Shape, Venue } from "../../core/show/index.ts";
 
 type Kind = Shape["kind"];
 
@@ -14,11 +14,8 @@ export const SHAPE_KINDS: readonly { readonly value: Kind; readonly name: string
 	{ value: "line", name: "line" },
 ];
 
-/** Lowest slot of a new formation, m: high enough to be seen over heads and trees. */
-const LOWEST = 20;
-
 /** A new formation of a kind, for the whole fleet where the kind allows, spread to a comfortable spacing. */
-export function freshShape(kind: Kind, drones: number, limits: Limits): NewFormation {
+export function freshShape(kind: Kind, { count: drones, limits }: Fleet, venue: Venue): NewFormation {
 	const count = Math.max(1, drones);
 	const side = Math.max(1, Math.floor(Math.sqrt(count)));
 	const raw = ((): Shape => {
@@ -56,25 +53,9 @@ export function freshShape(kind: Kind, drones: number, limits: Limits): NewForma
 				return { kind, paths: [{ d: "M0 0H10" }], height: 10, count, style: "outline" };
 		}
 	})();
-	const shape = sizeToSpacing(raw, limits, 1.2);
-	return { name: kind === "text" ? "HELLO" : kind, shape, place: { position: [0, 30, LOWEST + halfHeight(shape)] } };
-}
-
-function halfHeight(shape: Shape): number {
-	switch (shape.kind) {
-		case "ring":
-		case "disc":
-		case "sphere":
-			return shape.radius;
-		case "helix":
-		case "text":
-		case "drawing":
-			return shape.height / 2;
-		case "wave":
-			return shape.rise;
-		default:
-			return 0;
-	}
+	const name = kind === "text" ? "HELLO" : kind;
+	const { shape, place } = settleShape(raw, limits, venue, name);
+	return { name, shape, place };
 }
 
 const LABELS: Record<string, string> = {
