@@ -13,11 +13,12 @@ const THEMES = ["Show", "Edit", "Music", "Cues", "View"] as const;
 export function Masthead({ actions }: { actions: readonly Action[] }) {
 	const title = useStudioState((state) => state.show?.title ?? null);
 	const unsaved = useStudioState((state) => state.unsaved);
+	const called = title || (title === null ? "Starstave" : "Untitled show");
 	return (
 		<header className="masthead">
 			<MenuTrigger>
-				<Button className="title plain" aria-label={`${title || "Starstave"}: menu`}>
-					{title || (title === null ? "Starstave" : "Untitled show")}
+				<Button className="title plain" aria-label={`${called}: menu`}>
+					{called}
 					<ChevronDown aria-hidden />
 				</Button>
 				<Popover className="floating menu-box" placement="bottom start">

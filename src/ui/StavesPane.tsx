@@ -83,5 +83,8 @@ export function StavesPane() {
 		[beatMap],
 	);
 	useFrame(follow);
-	return <section ref={host} className="staves" aria-label="Staves: the music with its cues" />;
+	return (
+		// biome-ignore lint/a11y/noNoninteractiveTabindex: what scrolls has to be reached by keys too
+		<section ref={host} className="staves" tabIndex={0} aria-label="Staves: the music with its cues" />
+	);
 }

@@ -130,7 +130,7 @@ function FormationTrouble() {
 				<button
 					type="button"
 					className="small"
-					aria-label={`What would mend ${show.formations.byId[one.id]?.name || one.id}`}
+					aria-label={`What would mend it: ${show.formations.byId[one.id]?.name || one.id}`}
 					onClick={() => {
 						commands.select({ kind: "formation", id: one.id });
 						desk.setState({ margin: "formations" });
