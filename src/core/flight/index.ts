@@ -8,6 +8,7 @@ export type { WakeRemedy } from "./care/wake-remedies.ts";
 export type { FormationCheck, ShowCheck, TransitionCheck } from "./check.ts";
 export { straightTime } from "./law/straight-time.ts";
 export { lawAt, lawDuration } from "./law/time-law.ts";
+export { LANDING_SPEED, LAST_METRES, LAST_METRES_SPEED } from "./law/vertical-law.ts";
 export type { LegProblem, PlanProgress } from "./leg-problem.ts";
 export type { AssignmentCertificate, Plan, Proof, TimeLaw, Verdict } from "./plan.ts";
 export { PLANNER_VERSION, planLeg } from "./plan-leg.ts";

@@ -1,4 +1,12 @@
-import type { Care, ShowCheck, ShowFlight, TransitionCheck } from "../flight/index.ts";
+import {
+	type Care,
+	LANDING_SPEED,
+	LAST_METRES,
+	LAST_METRES_SPEED,
+	type ShowCheck,
+	type ShowFlight,
+	type TransitionCheck,
+} from "../flight/index.ts";
 import { find, type Show } from "../show/index.ts";
 import { GAP_TOLERANCE, LIMIT_TOLERANCE, TIGHT_SHARE } from "../units/index.ts";
 import { attentionOf, careSection } from "./care-section.ts";
@@ -131,6 +139,7 @@ function assumptions(input: ReportInput): string[] {
 		`Slots are rounded to whole millimetres, so a gap may stand ${1000 * GAP_TOLERANCE} mm under the spacing and no more; a peak may pass its limit by the share ${LIMIT_TOLERANCE} and no more.`,
 		`A verdict is tight when less than ${100 * TIGHT_SHARE} % of the time or of the spacing is in hand.`,
 		"Below 1 m only the take-off grid's own pitch counts as spacing.",
+		`Over the take-off grid drones come down at no more than ${LANDING_SPEED} m/s, the last ${LAST_METRES} m at no more than ${LAST_METRES_SPEED} m/s, each onto its own place.`,
 		"The proof takes every drone to be exactly on its path; it knows no wind, no lag and no failing motor.",
 		`A called cue has its standby ${STANDBY_SECONDS} s before it.`,
 	];

@@ -1,4 +1,5 @@
 import { useState } from "react";
+import { sayCare } from "../../core/flight/index.ts";
 import { ChoiceField, TextField } from "../fields/Field.tsx";
 import { useStudio, useStudioState } from "../studio-context.ts";
 import { Cautions } from "./Margin.tsx";
@@ -10,6 +11,9 @@ type Rate = (typeof RATES)[number];
 export function HandOff() {
 	const { commands } = useStudio();
 	const flies = useStudioState((state) => state.check?.flies ?? false);
+	const show = useStudioState((state) => state.show);
+	const care = useStudioState((state) => state.care);
+	const matters = show && care ? sayCare(show, care).filter(({ attention }) => attention) : [];
 	const pending = useStudioState((state) => state.unchecked.size > 0);
 	const busy = useStudioState((state) => state.jobs.length > 0);
 	const [rows, setRows] = useState<"5" | "10" | "20">("10");
@@ -57,6 +61,12 @@ export function HandOff() {
 					}}
 				/>
 			</div>
+			{matters.length > 0 && (
+				<p>
+					For the flight director to see to first: {matters.map(({ heading }) => heading.toLowerCase()).join("; ")}. The
+					report says what; see Care too.
+				</p>
+			)}
 			{!flies && !pending && (
 				<p className="trouble">
 					The show does not fly as it stands, so flight paths and light stay here. A draft carries the rest.

@@ -1,9 +1,9 @@
 import { createRandom, pairsWithin } from "../../maths/index.ts";
 import type { Fleet, Show, Tracking } from "../../show/index.ts";
+import { lawAt, lawDuration } from "../law/time-law.ts";
 import type { Leg, ShowFlight } from "../show-flight.ts";
 import { GRAVITY } from "./fall.ts";
 import { delayMargin, Followers, farthestOff, type Loop, stepFor } from "./follower.ts";
-import { motionOnLeg } from "./motion.ts";
 
 /** One transition as drones fly it that follow their paths with a lag. */
 export interface LegAsFlown {
@@ -48,7 +48,8 @@ const SEED = 20;
 /** Every transition of a show as flown; launch and landing are slow and not followed. */
 export function flyAsFollowed(show: Show, flight: ShowFlight): AsFlown {
 	const { fleet, venue } = show;
-	const loops = loopsOf(fleet, flight.drones);
+	const loops = loopsOf(fleet);
+	const kinds = kindsOf(flight.drones);
 	const mean = loopOf(fleet.tracking, 1);
 	const slowest = loopOf(fleet.tracking, 1 - fleet.tracking.spread);
 	const quickest = loopOf(fleet.tracking, 1 + fleet.tracking.spread);
@@ -59,7 +60,7 @@ export function flyAsFollowed(show: Show, flight: ShowFlight): AsFlown {
 	flight.legs.forEach((leg, k) => {
 		if (!steady || leg.id === "launch" || leg.id === "landing") return;
 		const next = flight.legs[k + 1]?.departs ?? flight.ends;
-		legs.push(followLeg(leg, flight.drones, loops, Math.min(AFTER, next - leg.arrives), fleet, push));
+		legs.push(followLeg(leg, kinds, loops, Math.min(AFTER, next - leg.arrives), fleet, push));
 	});
 	return {
 		legs,
@@ -81,50 +82,87 @@ function loopOf({ frequency, damping, recovery, delay }: Tracking, quicker: numb
 	return { omega: 2 * Math.PI * frequency * quicker, damping, integral: 1 / recovery, delay };
 }
 
-/** No two drones are alike: each is quicker or slower than the mean by up to the spread, always the same way. */
-function loopsOf({ tracking }: Fleet, drones: number): Loop[] {
-	const random = createRandom(SEED);
-	return Array.from({ length: drones }, () => loopOf(tracking, 1 + tracking.spread * (2 * random.next() - 1)));
+/** Drones differ: each is quicker or slower than the mean by up to the spread, in one of so many kinds. */
+const KINDS = 9;
+
+function loopsOf({ tracking }: Fleet): Loop[] {
+	return Array.from({ length: KINDS }, (_, kind) =>
+		loopOf(tracking, 1 + tracking.spread * ((2 * kind) / (KINDS - 1) - 1)),
+	);
 }
 
+/** N: the kind of each drone, by chance, always the same way. */
+function kindsOf(drones: number): Uint8Array {
+	const random = createRandom(SEED);
+	return Uint8Array.from({ length: drones }, () => random.below(KINDS));
+}
+
+/**
+ * A path is a polynomial in s and a follower is linear, so what a drone does is the same polynomial in what its kind
+ * makes of s, s² and so on: a few signals are followed instead of every axis of every drone.
+ */
 function followLeg(
 	leg: Leg,
-	drones: number,
+	kinds: Uint8Array,
 	loops: readonly Loop[],
 	after: number,
 	fleet: Fleet,
 	push: number,
 ): LegAsFlown {
-	const { downwash } = fleet.limits;
-	const path = new Float64Array(3 * drones);
-	const unused = new Float64Array(3 * drones);
-	motionOnLeg(leg, drones, 0, path, unused);
+	const { plan } = leg;
+	const duration = leg.arrives - leg.departs;
+	const pace = duration > 0 ? lawDuration(plan.law) / duration : 0;
+	const sAt = (since: number): number => (since >= duration ? 1 : lawAt(plan.law, since * pace));
 	const asked = stepFor(Math.max(...loops.map(({ omega }) => omega)));
 	const between = Math.max(1, Math.ceil(1 / (RATE * asked)));
 	const step = 1 / (RATE * between);
-	const followers = new Followers(loops, path, step);
+	const { degree } = plan;
+	// KINDS × degree: s, s², … as each kind should follow them.
+	const powers = new Float64Array(KINDS * degree);
+	const raise = (s: number): void => {
+		for (let k = 0; k < powers.length; k++) powers[k] = k % degree === 0 ? s : powers[k - 1] * s;
+	};
+	const followers = new Followers(loops, powers, step);
+	const path = new Float64Array(3 * kinds.length);
+	lay(leg, kinds, powers, path);
+	const flown = path.slice();
 	const before = path.slice();
-	const duration = leg.arrives - leg.departs;
 	let lag = { distance: 0, time: leg.departs, drone: 0 };
 	let [atArrival, settled] = [0, 0];
-	const nearest = new Nearest(downwash, fleet.limits.spacing);
+	const nearest = new Nearest(fleet.limits.downwash, fleet.limits.spacing);
 	const instants = Math.ceil((duration + after) * RATE);
 	for (let instant = 0; instant < instants; instant++) {
 		for (let part = 0; part < between; part++) {
-			motionOnLeg(leg, drones, (instant * between + part) * step, path, unused);
-			followers.advance(path, null);
+			raise(sAt((instant * between + part) * step));
+			followers.advance(powers, null);
 		}
 		const since = (instant + 1) / RATE;
-		motionOnLeg(leg, drones, since, path, unused);
-		const off = farthestOf(followers.positions, path);
+		raise(sAt(since));
+		lay(leg, kinds, powers, path);
+		lay(leg, kinds, followers.positions, flown);
+		const off = farthestOf(flown, path);
 		if (off.distance > lag.distance) lag = { ...off, time: leg.departs + since };
 		if (since <= duration + 1e-9) atArrival = off.distance;
 		if (since >= duration && off.distance > NEAR) settled = since - duration;
-		nearest.look(before, followers.positions, since - 1 / RATE, 1 / RATE);
-		before.set(followers.positions);
+		nearest.look(before, flown, since - 1 / RATE, 1 / RATE);
+		before.set(flown);
 	}
 	const gap = nearest.found === null ? null : { ...nearest.found, time: leg.departs + nearest.found.time };
 	return { id: leg.id, lag, atArrival, settled, gap, gapInGust: gap && Math.max(0, gap.distance - push) };
+}
+
+/** Where the fleet is with these powers of s for each kind of drone, into `out`: 3·N metres, drone after drone. */
+function lay({ plan, rowOfDrone }: Leg, kinds: Uint8Array, powers: Float64Array, out: Float64Array): void {
+	const { degree, paths } = plan;
+	for (let drone = 0; drone < kinds.length; drone++) {
+		const own = kinds[drone] * degree - 1;
+		for (let axis = 0; axis < 3; axis++) {
+			const start = (3 * rowOfDrone[drone] + axis) * (degree + 1);
+			let value = paths[start];
+			for (let k = 1; k <= degree; k++) value += paths[start + k] * powers[own + k];
+			out[3 * drone + axis] = value;
+		}
+	}
 }
 
 function farthestOf(positions: Float64Array, path: Float64Array): { distance: number; drone: number } {
@@ -161,11 +199,13 @@ class Nearest {
 	}
 
 	private lookAt(i: number, j: number, from: Float64Array, to: Float64Array, since: number, span: number): void {
-		const { downwash } = this;
-		const apart = (at: Float64Array, axis: number): number =>
-			(at[3 * j + axis] - at[3 * i + axis]) / (axis === 2 ? downwash : 1);
-		const [ux, uy, uz] = [apart(from, 0), apart(from, 1), apart(from, 2)];
-		const [vx, vy, vz] = [apart(to, 0) - ux, apart(to, 1) - uy, apart(to, 2) - uz];
+		const [a, b] = [3 * i, 3 * j];
+		const ux = from[b] - from[a];
+		const uy = from[b + 1] - from[a + 1];
+		const uz = (from[b + 2] - from[a + 2]) / this.downwash;
+		const vx = to[b] - to[a] - ux;
+		const vy = to[b + 1] - to[a + 1] - uy;
+		const vz = (to[b + 2] - to[a + 2]) / this.downwash - uz;
 		const square = vx * vx + vy * vy + vz * vz;
 		const s = square === 0 ? 0 : Math.min(1, Math.max(0, -(ux * vx + uy * vy + uz * vz) / square));
 		const distance = Math.hypot(ux + s * vx, uy + s * vy, uz + s * vz);

@@ -56,7 +56,7 @@ export function stepFor(omega: number): number {
 }
 
 /**
- * Many followers side by side, each axis of each drone one of them, stepped together. The command is held at its value
+ * Many followers side by side, several with each loop (the axes of a drone, say), stepped together. The command is held at its value
  * half way through the step, less the delay, between the last ones given (the midpoint rule; ahead of them by the
  * Adams–Bashforth rule of second order where the delay is shorter than that).
  */
@@ -71,11 +71,14 @@ export class Followers {
 	private readonly gains: readonly Gains[];
 	private readonly delays: Float64Array;
 	private readonly step: number;
+	/** Followers with each loop. */
+	private readonly each: number;
 	private count = 0;
 
-	/** @param loops one for each drone; @param start 3·N metres, at rest */
+	/** @param start where each follower stands at rest, all of the first loop first: as many for each loop */
 	constructor(loops: readonly Loop[], start: Float64Array, step: number) {
 		this.step = step;
+		this.each = start.length / loops.length;
 		this.gains = loops.map(gainsOf);
 		this.delays = Float64Array.from(loops, ({ delay }) => delay);
 		this.depth = Math.ceil(Math.max(...loops.map(({ delay }) => delay)) / step) + 3;
@@ -86,20 +89,20 @@ export class Followers {
 		this.commands = new Float64Array(start.length * this.depth);
 		// At rest on the path the integral holds what the weighted set point leaves open.
 		for (let k = 0; k < start.length; k++) {
-			const { position, setPoint, integral } = this.gains[Math.floor(k / 3)];
+			const { position, setPoint, integral } = this.gains[Math.floor(k / this.each)];
 			this.sums[k] = integral > 0 ? ((position - setPoint) * start[k]) / integral : 0;
 		}
 	}
 
 	/**
-	 * @param path 3·N metres: where the drones should be now
-	 * @param push 3·N m/s², or null for still air, over the step
+	 * @param path where each should be now
+	 * @param push what pushes each over the step, as an acceleration; null for still air
 	 */
 	advance(path: Float64Array, push: Float64Array | null): void {
 		const { positions, speeds, sums, errors, commands, depth, step } = this;
 		for (let k = 0; k < positions.length; k++) {
-			const drone = Math.floor(k / 3);
-			const gains = this.gains[drone];
+			const loop = Math.floor(k / this.each);
+			const gains = this.gains[loop];
 			const error = path[k] - positions[k];
 			if (this.count > 0) sums[k] += (step * (error + errors[k])) / 2;
 			errors[k] = error;
@@ -108,7 +111,7 @@ export class Followers {
 			const ring = k * depth;
 			commands[ring + (this.count % depth)] = command;
 			// Steps back from now to the command that acts: negative is ahead of it.
-			const back = this.delays[drone] / step - 0.5;
+			const back = this.delays[loop] / step - 0.5;
 			const whole = Math.max(0, Math.floor(back));
 			const newer = this.commandAt(ring, whole);
 			const older = this.commandAt(ring, whole + 1);
@@ -129,9 +132,9 @@ export class Followers {
 /** Metres that a push which comes at once and stays takes a drone off its place at most; @param push m/s² */
 export function farthestOff(loop: Loop, push: number): number {
 	const step = stepFor(loop.omega) / 2;
-	const followers = new Followers([loop], new Float64Array(3), step);
-	const path = new Float64Array(3);
-	const pushes = Float64Array.of(push, 0, 0);
+	const followers = new Followers([loop], new Float64Array(1), step);
+	const path = new Float64Array(1);
+	const pushes = Float64Array.of(push);
 	// The first swing is the largest; it is over well within two periods.
 	const steps = Math.ceil((4 * Math.PI) / loop.omega / step) + Math.ceil(loop.delay / step);
 	let most = 0;

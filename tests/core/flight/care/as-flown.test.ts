@@ -2,6 +2,8 @@ import { describe, expect, it } from "vitest";
 import { airtimeOf } from "../../../../src/core/flight/care/airtime.ts";
 import { flyAsFollowed, gustPush } from "../../../../src/core/flight/care/as-flown.ts";
 import { GRAVITY } from "../../../../src/core/flight/care/fall.ts";
+import { Followers } from "../../../../src/core/flight/care/follower.ts";
+import { motionOnLeg } from "../../../../src/core/flight/care/motion.ts";
 import { flightOf, showWith, steadyLeg } from "./one-leg.ts";
 
 const tracking = { frequency: 0.8, damping: 0.8, recovery: 2, delay: 0, spread: 0 };
@@ -36,6 +38,41 @@ describe("the fleet as flown", () => {
 		// 6 m/s × 0.32 s × 2 × 20 % is the most that two can differ, or less as the seed has it.
 		expect(gaps[1]).toBeGreaterThan(2 - 6 * (1.6 / omega) * (1 / 0.8 - 1 / 1.2) * 1.1);
 		expect(gaps[1]).not.toBeCloseTo(2, 2);
+	});
+
+	it("is on a bent path what following each axis of each drone gives", () => {
+		const straight = steadyLeg("c1", 0, 8, [0, 0, 50, 0, 3, 50], [40, 0, 60, 40, 3, 60]);
+		// x, y, z of both drones by powers of s: out of the straight by 4s(1 − s) times 5 m, −3 m, 2 m.
+		const bends = [5, -3, 2, -5, 1, 2];
+		const paths = Float64Array.from(
+			bends.flatMap((bend, k) => {
+				const [start, way] = straight.plan.paths.subarray(2 * k, 2 * k + 2);
+				return [start, way + 4 * bend, -4 * bend];
+			}),
+		);
+		const leg = { ...straight, plan: { ...straight.plan, degree: 2, paths } };
+		const show = showWith(2, { tracking: { ...tracking, delay: 0.05 } });
+		const [flown] = flyAsFollowed(show, flightOf([leg])).legs;
+
+		const one = { omega, damping: 0.8, integral: 0.5, delay: 0.05 };
+		const [path, unused] = [new Float64Array(6), new Float64Array(6)];
+		motionOnLeg(leg, 2, 0, path, unused);
+		const followers = new Followers([one, one], path, 1 / 110);
+		let [lag, gap] = [0, Number.POSITIVE_INFINITY];
+		for (let step = 0; step < 880; step++) {
+			motionOnLeg(leg, 2, step / 110, path, unused);
+			followers.advance(path, null);
+			if (step % 11 !== 10) continue;
+			motionOnLeg(leg, 2, (step + 1) / 110, path, unused);
+			const at = followers.positions;
+			for (const k of [0, 3])
+				lag = Math.max(lag, Math.hypot(...[0, 1, 2].map((axis) => at[k + axis] - path[k + axis])));
+			gap = Math.min(gap, Math.hypot(at[3] - at[0], at[4] - at[1], (at[5] - at[2]) / 2));
+		}
+		expect(flown.lag.distance).toBeCloseTo(lag, 9);
+		// Looked at only at instants here, straight between them there.
+		expect(flown.gap!.distance).toBeLessThanOrEqual(gap + 1e-9);
+		expect(flown.gap!.distance).toBeGreaterThan(gap - 0.05);
 	});
 
 	it("counts a gust against the gap once, by what it pushes one drone", () => {
