@@ -119,6 +119,7 @@ describe("check", () => {
 			"verdicts",
 			"peak",
 			"gap",
+			"breach",
 			"certificate",
 			"remedies",
 		];

@@ -1,8 +1,9 @@
-import { sayCare, type TransitionCheck } from "../../core/flight/index.ts";
+import { type Remedy, sayCare, type TransitionCheck } from "../../core/flight/index.ts";
 import { flashSentence } from "../../core/handoff/index.ts";
 import { find, type Show } from "../../core/show/index.ts";
 import type { Answer } from "../answer.ts";
 import type { Arguments } from "../arguments.ts";
+import { findRemedies, type Mended } from "../find-remedies.ts";
 import { type Flown, flyWhole } from "../fly.ts";
 import type { Progress } from "../progress.ts";
 import { readShowFile } from "../shows.ts";
@@ -11,7 +12,13 @@ import { hearCurves } from "../tracks.ts";
 /** The check under the keys of the JSON answer. */
 export function describeCheck(flown: Flown) {
 	const { check, care, flashes, notes, timing } = flown;
-	return { ...check, care, flashes, notes: [...check.notes, ...notes], timing };
+	const transitions = check.transitions.map((one) => ({ ...one, remedies: one.remedies.map(describeRemedy) }));
+	return { ...check, transitions, care, flashes, notes: [...check.notes, ...notes], timing };
+}
+
+/** Without the picture that the app shows of it. */
+function describeRemedy({ ghost: _ghost, ...remedy }: Remedy): Omit<Remedy, "ghost"> {
+	return remedy;
 }
 
 function legLine(show: Show, leg: TransitionCheck): string {
@@ -22,16 +29,19 @@ function legLine(show: Show, leg: TransitionCheck): string {
 	return `${name}: ${leg.verdicts.join(" ")}, ${needed} of ${leg.available.toFixed(2)} s${gap}`;
 }
 
+const remedyLine = ({ change, cost }: Remedy): string => `  ${change} ${cost}`;
+
 /** The check in lines for people: every leg, what is wrong beside them, the answer last. */
-export function checkLines(show: Show, flown: Flown): string[] {
+export function checkLines(show: Show, flown: Flown, mended: Mended["formations"] = []): string[] {
 	const { check, care, flashes, notes } = flown;
 	const legs = [check.launch, ...check.transitions, check.landing].filter((leg) => leg !== null);
 	const { airborne, limit } = check.endurance;
-	const lines = legs.map((leg) => legLine(show, leg));
+	const lines = legs.flatMap((leg) => [legLine(show, leg), ...leg.remedies.map(remedyLine)]);
 	for (const { id, gap, verdicts } of check.formations) {
 		if (verdicts.includes("flies")) continue;
 		const name = find(show.formations, id)?.name || id;
 		lines.push(`Formation ${name}: ${verdicts.join(" ")}, smallest distance ${gap.toFixed(3)} m`);
+		lines.push(...(mended.find((one) => one.id === id)?.remedies ?? []).map(remedyLine));
 	}
 	lines.push(`Endurance: ${airborne.toFixed(0)} s from motor start, limit ${limit.toFixed(0)} s`);
 	for (const { heading, sentences, attention } of sayCare(show, care)) {
@@ -48,6 +58,11 @@ export async function runCheck(given: Arguments, progress: Progress): Promise<An
 	const [path] = given.operands;
 	const { show, soundtrack } = readShowFile(path);
 	const curves = await hearCurves(show, path, soundtrack, given.values.get("--soundtrack"), progress);
-	const flown = await flyWhole(show, curves, progress);
-	return { code: flown.check.flies ? 0 : 2, json: describeCheck(flown), lines: checkLines(show, flown) };
+	const { flown, formations } = findRemedies(await flyWhole(show, curves, progress), progress);
+	const formationRemedies = formations.map(({ id, remedies }) => ({ id, remedies: remedies.map(describeRemedy) }));
+	return {
+		code: flown.check.flies ? 0 : 2,
+		json: { ...describeCheck(flown), formationRemedies },
+		lines: checkLines(show, flown, formations),
+	};
 }
