@@ -31,6 +31,8 @@ const STEPS = 16;
 /** The bound has to leave this share of the time over, since plans are a little longer. */
 const MARGIN = 0.99;
 const MOST_TURN = 90;
+/** Likewise of a picture that is read: turned further, nobody can. */
+const MOST_TURN_READ = 30;
 const LARGEST = 1.6;
 const SMALLEST = 0.5;
 
@@ -196,15 +198,17 @@ function waysOf(base: TrialBase, kind: Reshaping, end: End, other: End): Way[] {
 			},
 		];
 	}
+	const { shape } = base.show.formations.byId[end.formation];
+	const most = shape.kind === "text" || shape.kind === "drawing" ? MOST_TURN_READ : MOST_TURN;
 	const step = own.count > 500 ? 15 : 5;
 	return [
 		{
 			kind,
 			end,
 			// To either side in turn, so that the smallest turn is found first.
-			steps: (2 * MOST_TURN) / step,
+			steps: (2 * most) / step,
 			at: (amount) => {
-				const k = Math.round((amount * 2 * MOST_TURN) / step);
+				const k = Math.round((amount * 2 * most) / step);
 				const size = Math.ceil(k / 2) * step;
 				const turn = k % 2 === 1 ? size : -size;
 				return {
