@@ -4,7 +4,7 @@ import { type Camera, projectPoint } from "./camera.ts";
 export interface GroundMarks {
 	/** Corners of the fall zone; null where nothing falls. */
 	readonly zone: readonly (readonly [number, number])[] | null;
-	/** The zone reaches people or leaves the border. */
+	/** The zone comes too near to people or leaves the border. */
 	readonly breaks: boolean;
 	/** Corners of the flight volume with its buffer. */
 	readonly border: readonly (readonly [number, number])[];
@@ -33,11 +33,11 @@ export function drawGround(
 		if (closed) pen.closePath();
 		pen.stroke();
 	};
-	const label = (text: string, x: number, y: number, ink: string): void => {
+	const label = (text: string, x: number, y: number, ink: string, under: boolean): void => {
 		const point = projectPoint(camera, x, y, 0, width, height);
 		if (!point) return;
 		pen.fillStyle = ink;
-		pen.fillText(text, point.x, point.y - 6 * ratio);
+		pen.fillText(text, point.x, point.y + (under ? 16 : -6) * ratio);
 	};
 	pen.save();
 	pen.font = `${13 * ratio}px "Atkinson Hyperlegible Next Variable", sans-serif`;
@@ -53,7 +53,7 @@ export function drawGround(
 		pen.setLineDash([9 * ratio, 5 * ratio]);
 		trace(marks.zone, true);
 		const far = marks.zone.reduce((a, b) => (b[1] > a[1] ? b : a));
-		label("fall zone", far[0], far[1], ink);
+		label("fall zone", far[0], far[1], ink, false);
 	}
 	if (marks.audience) {
 		const [from, to] = marks.audience;
@@ -61,7 +61,7 @@ export function drawGround(
 		pen.lineWidth = 2 * ratio;
 		pen.strokeStyle = INK;
 		trace(marks.audience, false);
-		label("audience line", (from[0] + to[0]) / 2, (from[1] + to[1]) / 2, QUIET);
+		label("audience line", (from[0] + to[0]) / 2, (from[1] + to[1]) / 2, QUIET, true);
 	}
 	pen.restore();
 }

@@ -24,7 +24,7 @@ function groundMarks({ show, care }: StudioState): GroundMarks | null {
 	const zone = care?.fallZone ?? null;
 	return {
 		zone: zone?.outline ?? null,
-		breaks: zone !== null && ((zone.audience !== null && zone.audience.distance <= 0) || zone.border.distance < 0),
+		breaks: zone !== null && ((zone.audience !== null && zone.audience.distance < buffer) || zone.border.distance < 0),
 		border: [
 			[x0, y0],
 			[x1, y0],

@@ -30,7 +30,7 @@ describe("the ground seen from above", () => {
 		expect(marksAt(state, 0, nothing, "audience").ground).toBeNull();
 	});
 
-	it("says that it breaks where the zone passes the audience line or the border, and not otherwise", () => {
+	it("says that it breaks where the zone comes nearer to the audience line than the buffer or passes the border, and not otherwise", () => {
 		const { fallZone } = careOf();
 		const breaks = (audience: number, border: number): boolean | undefined => {
 			const zone = {
@@ -41,8 +41,9 @@ describe("the ground seen from above", () => {
 			return marksAt({ ...state, care: { ...careOf(), fallZone: zone } } as StudioState, 0, nothing, "plan").ground
 				?.breaks;
 		};
-		expect(breaks(5, 5)).toBe(false);
-		expect(breaks(-1, 5)).toBe(true);
-		expect(breaks(5, -1)).toBe(true);
+		// The default buffer is 10 m.
+		expect(breaks(11, 5)).toBe(false);
+		expect(breaks(9, 5)).toBe(true);
+		expect(breaks(11, -1)).toBe(true);
 	});
 });

@@ -1,3 +1,4 @@
+import { useEffect, useRef } from "react";
 import { useStore } from "zustand";
 import { desk, type MarginPage } from "../desk.ts";
 import { useStudioState } from "../studio-context.ts";
@@ -20,6 +21,12 @@ const PAGES: readonly { readonly page: MarginPage; readonly name: string }[] = [
 /** The note in the margin: what is selected, or one of the pages about the whole show. */
 export function Margin() {
 	const page = useStore(desk, (state) => state.margin);
+	const aside = useRef<HTMLElement>(null);
+	// Another page is read from its head.
+	// biome-ignore lint/correctness/useExhaustiveDependencies: the page is what it follows
+	useEffect(() => {
+		aside.current?.scrollTo(0, 0);
+	}, [page]);
 	const hasShow = useStudioState((state) => state.show !== null);
 	if (!hasShow) {
 		return (
@@ -29,7 +36,7 @@ export function Margin() {
 		);
 	}
 	return (
-		<aside className="margin" aria-label="Margin">
+		<aside ref={aside} className="margin" aria-label="Margin">
 			<nav className="margin-pages" aria-label="Pages of the margin">
 				{PAGES.map((one) => (
 					<button

@@ -66,6 +66,11 @@ function sayFallZone(show: Show, zone: FallZone): CareTopic {
 		sentences.push(
 			`The fall zone reaches ${metres(-audience.distance)} past the audience line (drone ${audience.drone + 1} at ${clock(audience.time)}): move the show away from people, or fly it lower, slower or in less wind.`,
 		);
+	} else if (audience.distance < venue.buffer) {
+		attention = true;
+		sentences.push(
+			`It ends only ${metres(audience.distance)} short of the audience line (drone ${audience.drone + 1} at ${clock(audience.time)}), less than the buffer of ${venue.buffer} m.`,
+		);
 	} else {
 		sentences.push(
 			`It ends ${metres(audience.distance)} short of the audience line (nearest: drone ${audience.drone + 1} at ${clock(audience.time)}).`,
