@@ -11,8 +11,11 @@
 /** m/s², standard gravity (ISO 80000-3). */
 export const GRAVITY = 9.80665;
 
-/** Seconds a step. */
-const STEP = 0.02;
+/** Seconds a step at most; with much drag, this share of the time u/g in which a fall comes near its terminal speed. */
+const LONGEST_STEP = 0.05;
+const STEP_SHARE = 1 / 30;
+/** Share of the terminal speed by which a fall that has come to it may still differ. */
+const STEADY = 1e-9;
 
 /** What a fall has come to at one depth. */
 export interface Fall {
@@ -39,19 +42,26 @@ export function fallThrough(
 	depths: ArrayLike<number>,
 ): readonly Fall[] {
 	const drag = GRAVITY / terminalSpeed ** 2;
+	const h = Math.min(LONGEST_STEP, (STEP_SHARE * terminalSpeed) / GRAVITY);
 	const falls: Fall[] = [];
 	// Level speed, upward speed, drift, height over the start.
 	let state: State = [across, climb, 0, 0];
 	let time = 0;
 	while (falls.length < depths.length) {
-		const next = step(state, drag, STEP);
+		if (Math.hypot(state[0], state[1] + terminalSpeed) < STEADY * terminalSpeed) {
+			// Nothing changes any more.
+			const left = depths[falls.length] + state[3];
+			falls.push({ time: time + left / terminalSpeed, drift: state[2], down: terminalSpeed, across: state[0] });
+			continue;
+		}
+		const next = step(state, drag, h);
 		while (falls.length < depths.length && next[1] <= 0 && next[3] <= -depths[falls.length]) {
-			const part = crossing(state, drag, -depths[falls.length]);
+			const part = crossing(state, drag, -depths[falls.length], h);
 			const at = step(state, drag, part);
 			falls.push({ time: time + part, drift: at[2], down: -at[1], across: at[0] });
 		}
 		state = next;
-		time += STEP;
+		time += h;
 	}
 	return falls;
 }
@@ -79,9 +89,9 @@ function step(state: State, drag: number, h: number): State {
 }
 
 /** Seconds into the step at which the height is passed downwards: the later of the two times, by halving. */
-function crossing(state: State, drag: number, height: number): number {
+function crossing(state: State, drag: number, height: number, longest: number): number {
 	let low = 0;
-	let high = STEP;
+	let high = longest;
 	for (let k = 0; k < 30; k++) {
 		const middle = (low + high) / 2;
 		const at = step(state, drag, middle);
