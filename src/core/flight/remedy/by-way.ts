@@ -20,9 +20,10 @@ import { legProblems } from "../show/leg-problems.ts";
 import { changePlace, type End, endsOf, middleOf } from "./ends.ts";
 import { shareTime, type Timing } from "./leg-times.ts";
 import { applyRemedy, type RemedyStep } from "./remedy.ts";
-import { type Found, sayMove } from "./reshape.ts";
+import type { Found } from "./reshape.ts";
 import { sayTime } from "./say-cost.ts";
 import { isRefused, slotsAfter, type TrialBase, tryOut } from "./trial.ts";
+import { sayMove } from "./ways.ts";
 
 /** A formation in between: a copy of one end somewhere else, or points. */
 interface Stop {

@@ -10,8 +10,9 @@ import { SPACING_HAIR } from "../../units/index.ts";
 import { checkSlots } from "../show/check-slots.ts";
 import { changePlace, middleOf, nameOf } from "./ends.ts";
 import { bestFirst, type Remedy, type RemedyStep } from "./remedy.ts";
-import { extentOf, type Found, sayMove } from "./reshape.ts";
+import type { Found } from "./reshape.ts";
 import { isRefused, type TrialBase, tryOut } from "./trial.ts";
+import { extentOf, sayMove } from "./ways.ts";
 
 /** A change that may mend the formation, before it is tried. */
 interface Draft extends Pick<Remedy, "kind" | "change" | "cost" | "loss"> {

@@ -4,8 +4,9 @@ import type { ShowFlight } from "../show-flight.ts";
 import { goByWay } from "./by-way.ts";
 import { endsOf } from "./ends.ts";
 import { mendFormation } from "./mend-formation.ts";
-import { type Found, type Reshaping, reshape } from "./reshape.ts";
+import { type Found, reshape } from "./reshape.ts";
 import { isRefused, type TrialBase, trialBase, tryOut } from "./trial.ts";
+import type { Reshaping } from "./ways.ts";
 
 /** The ways in space in which remedies are looked for, each a piece of work of its own. */
 export const REMEDY_SEARCHES = ["shrink", "nearer", "turn", "spread", "way"] as const;

@@ -126,6 +126,24 @@ describe("remedies in space", () => {
 		expectToFly(show, "c1", answer);
 	});
 
+	it("change the picture and the times together where neither alone is enough", () => {
+		// The holds on either side give too little, and no picture can come near enough in 4 beats.
+		const cues = [
+			{ at: 20, length: 36, formation: "b" },
+			{ at: 58, length: 4, formation: "c" },
+			{ at: 68, length: 40, formation: "d" },
+		];
+		const formations = [disc("a", -30), disc("b", -30, 9), disc("c", 30), disc("d", 30, 9)];
+		const show = smallShow(16, formations, cues);
+		const { needed, remedies } = fly(show).check.transitions[1];
+		expect(needed!).toBeGreaterThan(5);
+		expect(remedies).toEqual([]);
+		const answer = search(show, "c2");
+		expect(answer.remedies.length).toBeGreaterThan(0);
+		expect(answer.remedies[0].change).toMatch(/m nearer to b\. Depart 2 beats earlier/);
+		expectToFly(show, "c2", answer);
+	});
+
 	it("offer nothing for a transition that flies, nor where the music leaves no time at all", () => {
 		const flying = smallShow(16, [disc("a", -20), disc("b", 20)], [{ at: 60, length: 60, formation: "b" }]);
 		expect(search(flying, "c1").remedies).toEqual([]);
