@@ -1,6 +1,6 @@
 import { useCallback, useEffect, useRef, useState } from "react";
 import { useStore } from "zustand";
-import type { StudioState } from "../app/index.ts";
+import { type StudioState, toOld } from "../app/index.ts";
 import { dronePositions } from "../core/flight/index.ts";
 import { lightAt } from "../core/light/index.ts";
 import type { Box } from "../core/show/index.ts";
@@ -68,10 +68,12 @@ export function NightPane() {
 
 	const buffers = useRef({ positions: new Float32Array(0), colours: new Uint8Array(0) });
 	const draw = useCallback(
-		(seconds: number, moved: boolean) => {
+		(heard: number, moved: boolean) => {
 			if (!view.current || (!moved && !fresh.current)) return;
 			fresh.current = false;
 			const state = studio.store.getState();
+			// While a new edit is held against the old one the sky is still the old show's.
+			const seconds = state.newEdit?.hears === "new" ? toOld(state.newEdit.map, heard) : heard;
 			const drones = state.flight?.drones ?? 0;
 			if (buffers.current.positions.length !== 3 * drones) {
 				buffers.current = { positions: new Float32Array(3 * drones), colours: new Uint8Array(3 * drones) };

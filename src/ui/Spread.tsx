@@ -10,6 +10,7 @@ import { Masthead } from "./Masthead.tsx";
 import { Margin } from "./margin/Margin.tsx";
 import { NightPane } from "./NightPane.tsx";
 import { Notices } from "./Notices.tsx";
+import { NewEditPane } from "./new-edit/NewEditPane.tsx";
 import { RoughCutQuestion } from "./RoughCutQuestion.tsx";
 import { StavesPane } from "./StavesPane.tsx";
 import { useStudio, useStudioState } from "./studio-context.ts";
@@ -21,17 +22,28 @@ export function Spread() {
 	const studio = useStudio();
 	const loop = useFrameLoop();
 	const file = useRef<HTMLInputElement>(null);
+	const editFile = useRef<HTMLInputElement>(null);
 	const [dropping, setDropping] = useState(false);
 	const started = useStudioState((state) => state.started);
 	const hasShow = useStudioState((state) => state.show !== null);
 	const readOnly = useStudioState((state) => state.readOnly);
 	const strip = useStore(desk, (state) => state.strip !== null);
-	const actions = useMemo(() => listActions({ studio, loop, chooseFile: () => file.current?.click() }), [studio, loop]);
+	const newEdit = useStudioState((state) => state.newEdit);
+	const actions = useMemo(
+		() =>
+			listActions({
+				studio,
+				loop,
+				chooseFile: () => file.current?.click(),
+				chooseEdit: () => editFile.current?.click(),
+			}),
+		[studio, loop],
+	);
 	useEffect(() => attachKeyboard(actions), [actions]);
 
 	return (
 		<main
-			className={strip ? "spread strip" : "spread"}
+			className={newEdit !== null ? "spread editing" : strip ? "spread strip" : "spread"}
 			onDragOver={(event) => {
 				event.preventDefault();
 				setDropping(true);
@@ -59,6 +71,19 @@ export function Spread() {
 					event.target.value = "";
 				}}
 			/>
+			<input
+				ref={editFile}
+				type="file"
+				className="unseen"
+				tabIndex={-1}
+				aria-label="Open a new edit of the music"
+				accept="audio/*,.wav,.mp3,.flac,.ogg,.opus,.m4a,.aac"
+				onChange={(event) => {
+					const chosen = event.target.files?.[0];
+					if (chosen) void studio.commands.openNewEdit(chosen);
+					event.target.value = "";
+				}}
+			/>
 			<section className="left" aria-label="Music">
 				<Masthead actions={actions} />
 				{readOnly !== null && (
@@ -66,8 +91,9 @@ export function Spread() {
 						{readOnly}
 					</p>
 				)}
-				{hasShow && <TransportBar />}
-				{hasShow ? <StavesPane /> : started && <EmptyDesk choose={() => file.current?.click()} />}
+				{newEdit !== null && <NewEditPane edit={newEdit} />}
+				{newEdit === null && hasShow && <TransportBar />}
+				{newEdit === null && (hasShow ? <StavesPane /> : started && <EmptyDesk choose={() => file.current?.click()} />)}
 			</section>
 			<div className="right">
 				<NightPane />

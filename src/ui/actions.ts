@@ -21,8 +21,9 @@ export interface Action {
 export interface ActionParts {
 	readonly studio: Studio;
 	readonly loop: FrameLoop;
-	/** Opens the browser's file dialog. */
+	/** Opens the browser's file dialog: for anything, or for a new edit of the soundtrack. */
 	readonly chooseFile: () => void;
+	readonly chooseEdit: () => void;
 }
 
 export function listActions(parts: ActionParts): Action[] {
@@ -58,12 +59,21 @@ export function listActions(parts: ActionParts): Action[] {
 			run: () => void commands.bringBackPrevious(),
 		},
 		{
+			id: "new-edit",
+			name: "New edit of the music …",
+			keys: "E",
+			theme: "Show",
+			available: () => canEdit() && store.getState().audioReady && store.getState().newEdit === null,
+			run: parts.chooseEdit,
+		},
+		{
 			id: "rough-cut",
 			name: "Make a rough cut …",
 			theme: "Show",
 			available: () => canEdit() && store.getState().analysis !== null,
 			run: () => desk.setState({ asksRoughCut: true }),
 		},
+		{ id: "tray", name: "Tray", keys: "Shift+7", theme: "Show", available: hasShow, run: page("tray") },
 		{ id: "hand-off", name: "Hand-off …", keys: "Shift+5", theme: "Show", available: hasShow, run: page("hand-off") },
 	];
 	const edit: Action[] = [
@@ -210,6 +220,14 @@ function musicActions({ studio }: ActionParts, hasShow: () => boolean, canEdit: 
 			theme: "Music",
 			available: hasShow,
 			run: () => (store.getState().playback.playing ? commands.pause() : void commands.play()),
+		},
+		{
+			id: "hear-other",
+			name: "Hear the other edit at the same place",
+			keys: "X",
+			theme: "Music",
+			available: () => store.getState().newEdit !== null,
+			run: () => void commands.hearEdit(store.getState().newEdit?.hears === "old" ? "new" : "old"),
 		},
 		{
 			id: "to-start",

@@ -2,7 +2,7 @@ import { createStore } from "zustand/vanilla";
 import type { NightViewpoint } from "../night/index.ts";
 
 /** Which page of the margin is open. */
-export type MarginPage = "detail" | "verdicts" | "care" | "formations" | "fleet-venue" | "hand-off";
+export type MarginPage = "detail" | "verdicts" | "care" | "formations" | "fleet-venue" | "hand-off" | "tray";
 
 /** What only the screens know: where one looks, not what the show is. */
 export interface Desk {

@@ -8,6 +8,7 @@ import "./styles/tokens.css";
 import "./styles/page.css";
 import "./styles/spread.css";
 import "./styles/care.css";
+import "./styles/new-edit.css";
 import "./styles/margin.css";
 import "./styles/floating.css";
 import { FrameContext } from "./use-frame.ts";

@@ -4,6 +4,7 @@ import { createBeatMap, cueTimes, type Show, writeShow } from "../../src/core/sh
 import type { WorkerClient } from "../../src/workers/index.ts";
 import { createNodeWorkers } from "../../src/workers/node-workers.ts";
 import { writeWav } from "../cli/make-track.ts";
+import { cutTrack } from "../e2e/cut-track.ts";
 import { makeTrack } from "../e2e/make-track.ts";
 import { type BundledWorker, bundleWorker } from "../workers/bundle-worker.ts";
 import { createFakeParts } from "./fake-parts.ts";
@@ -11,22 +12,6 @@ import { createFakeParts } from "./fake-parts.ts";
 const RATE = 44100;
 const track = makeTrack(120, 24);
 const fileOf = (bytes: Uint8Array, name: string) => new File([bytes as Uint8Array<ArrayBuffer>], name);
-
-/** Samples of a 16-bit mono WAV. */
-function samplesOf(wav: Uint8Array): Float32Array {
-	const view = new DataView(wav.buffer, wav.byteOffset + 44, wav.byteLength - 44);
-	return Float32Array.from({ length: view.byteLength / 2 }, (_, i) => view.getInt16(2 * i, true) / 32768);
-}
-
-/** The track without the bars from one second to another. */
-function cutOut(from: number, to: number): Uint8Array {
-	const samples = samplesOf(track.wav);
-	const [a, b] = [Math.round(from * RATE), Math.round(to * RATE)];
-	const kept = new Float32Array(samples.length - (b - a));
-	kept.set(samples.subarray(0, a), 0);
-	kept.set(samples.subarray(b), a);
-	return writeWav([kept], RATE);
-}
 
 describe("the client sends a new edit", () => {
 	let bundled: BundledWorker;
@@ -71,7 +56,7 @@ describe("the client sends a new edit", () => {
 	});
 
 	it("finds the cut, and leaves the show as it is until it is taken over", async () => {
-		expect(await studio.commands.openNewEdit(fileOf(cutOut(20, 24), "harbour short.wav"))).toBe(true);
+		expect(await studio.commands.openNewEdit(fileOf(cutTrack(track.wav, 20, 24), "harbour short.wav"))).toBe(true);
 		const { newEdit, show } = state();
 		expect(show).toBe(before);
 		const cut = newEdit!.map.stretches.find((one) => one.kind === "cut")!;

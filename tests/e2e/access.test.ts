@@ -1,22 +1,7 @@
-import { createRequire } from "node:module";
-import type { Page } from "playwright-core";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
+import { axePath, findBarriers } from "./barriers.ts";
 import { openStage, type Stage } from "./browser.ts";
 import { makeTrack } from "./make-track.ts";
-
-const axePath = createRequire(import.meta.url).resolve("axe-core/axe.min.js");
-
-/** What axe-core finds of WCAG 2.2 A and AA, as "rule: selector". */
-async function findBarriers(page: Page): Promise<string[]> {
-	return page.evaluate(async () => {
-		const axe = (window as unknown as { axe: { run(root: Document, options: object): Promise<AxeAnswer> } }).axe;
-		interface AxeAnswer {
-			violations: { id: string; nodes: { target: string[] }[] }[];
-		}
-		const answer = await axe.run(document, { runOnly: ["wcag2a", "wcag2aa", "wcag21a", "wcag21aa", "wcag22aa"] });
-		return answer.violations.flatMap((one) => one.nodes.map((node) => `${one.id}: ${node.target.join(" ")}`));
-	});
-}
 
 describe("access", () => {
 	let stage: Stage;
@@ -57,6 +42,7 @@ describe("access", () => {
 			"Shift+Digit4",
 			"Shift+Digit5",
 			"Shift+Digit6",
+			"Shift+Digit7",
 		]) {
 			await page.keyboard.press(key);
 			expect(await findBarriers(page), key).toEqual([]);

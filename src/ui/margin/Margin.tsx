@@ -7,6 +7,7 @@ import { Detail } from "./Detail.tsx";
 import { FleetVenue } from "./FleetVenue.tsx";
 import { Formations } from "./Formations.tsx";
 import { HandOff } from "./HandOff.tsx";
+import { Tray } from "./Tray.tsx";
 import { Verdicts } from "./Verdicts.tsx";
 
 const PAGES: readonly { readonly page: MarginPage; readonly name: string }[] = [
@@ -16,6 +17,7 @@ const PAGES: readonly { readonly page: MarginPage; readonly name: string }[] = [
 	{ page: "formations", name: "Formations" },
 	{ page: "fleet-venue", name: "Fleet & venue" },
 	{ page: "hand-off", name: "Hand-off" },
+	{ page: "tray", name: "Tray" },
 ];
 
 /** The note in the margin: what is selected, or one of the pages about the whole show. */
@@ -57,6 +59,7 @@ export function Margin() {
 				{page === "formations" && <Formations />}
 				{page === "fleet-venue" && <FleetVenue />}
 				{page === "hand-off" && <HandOff />}
+				{page === "tray" && <Tray />}
 			</div>
 		</aside>
 	);
