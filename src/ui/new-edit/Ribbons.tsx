@@ -210,7 +210,7 @@ function StretchShape({
 			{title}
 			<path
 				className={stretch.kind === "stretched" ? "ribbon stretched" : "ribbon"}
-				style={{ fillOpacity: 0.12 + 0.2 * stretch.confidence }}
+				fillOpacity={0.12 + 0.2 * stretch.confidence}
 				d={`M${a} ${TOP}${side(a, c)}L${d} ${TOP + GAP}${back(d, b)}Z`}
 			/>
 			{rate !== "" && Math.min(b - a, d - c) > 70 && (
