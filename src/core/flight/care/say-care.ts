@@ -153,8 +153,8 @@ function sayAsFlown(show: Show, flown: AsFlown): CareTopic {
 	const { fleet, venue } = show;
 	const { tracking } = fleet;
 	const assumptions = [
-		`Each drone follows its path as a second-order system of ${tracking.frequency} Hz and damping ${tracking.damping}, with ${(1000 * tracking.delay).toFixed(0)} ms of delay and integral action over ${tracking.recovery} s, no two alike by ± ${Math.round(100 * tracking.spread)} %. A model, not your fleet: measure it, and give what you measured.`,
-		`Gaps are looked at ${flown.rate} times a second, straight between. The gust is ${venue.gust} m/s on top of ${venue.wind} m/s of wind, comes at once and stays, and strikes one drone of a pair and not the other.`,
+		`Each drone follows its path as a second-order system of ${tracking.frequency} Hz and damping ${tracking.damping}, with ${(1000 * tracking.delay).toFixed(0)} ms of delay and integral action over ${tracking.recovery} s, one quicker or slower than another by up to ${Math.round(100 * tracking.spread)} % of the mean. A model, not your fleet: measure it, and give what you measured.`,
+		`Gaps are looked at ${flown.rate} times a second, straight between. The gust is ${venue.gust} m/s on top of ${venue.wind} m/s of wind, comes at once and stays, and strikes one drone of a pair and not the other. Attention is asked for where less than half the spacing is left.`,
 	];
 	const topic = { id: "as-flown", heading: "As flown", assumptions } as const;
 	if (!flown.steady) {
