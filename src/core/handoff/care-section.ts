@@ -36,7 +36,7 @@ function energyScale({ impact }: FallZone): Html {
 	const at = (energy: number): string => ((200 * energy) / most).toFixed(1);
 	const marks = impact.marks.map(
 		({ energy }, k) =>
-			html`<line x1="${at(energy)}" x2="${at(energy)}" y1="4" y2="${20 + 8 * k}"/><text x="${Number(at(energy)) + 2}" y="${20.5 + 8 * k}">${k === 0 ? "107.120" : "107.130"}: ${energy.toFixed(1)} J</text>`,
+			html`<line x1="${at(energy)}" x2="${at(energy)}" y1="4" y2="${28 - 8 * k}"/><text x="${Number(at(energy)) + 2}" y="${28.5 - 8 * k}">${k === 0 ? "107.120" : "107.130"}: ${energy.toFixed(1)} J</text>`,
 	);
 	return html`<svg class="energy" viewBox="0 0 215 32" role="img" aria-label="Impact energy against two marks"><rect x="0" y="7" width="${at(impact.energy)}" height="8"/>${marks}<text x="${at(impact.energy)}" y="5" text-anchor="end">${impact.energy.toFixed(0)} J</text></svg>
 `;

@@ -5,6 +5,9 @@ import { type Html, html } from "./html.ts";
 /** Metres of paper about what is drawn. */
 const EDGE = 12;
 
+/** Places of the take-off grid that are drawn at most. */
+const MOST_PLACES = 1000;
+
 type Corner = readonly [number, number];
 
 /**
@@ -26,7 +29,10 @@ export function groundPlan(show: Show, zone: FallZone | null, ground: ArrayLike<
 	const at = (x: number, y: number): string => `${x.toFixed(1)},${(-y).toFixed(1)}`;
 	const box = (by: number): Html =>
 		html`<rect x="${(min[0] - by).toFixed(1)}" y="${(-max[1] - by).toFixed(1)}" width="${(max[0] - min[0] + 2 * by).toFixed(1)}" height="${(max[1] - min[1] + 2 * by).toFixed(1)}" class="${by === 0 ? "volume" : "buffer"}"/>`;
-	const places = ground === null ? [] : Array.from({ length: ground.length / 3 }, (_, i) => i);
+	const count = ground === null ? 0 : ground.length / 3;
+	// Of a very large fleet some places stand for all.
+	const every = Math.max(1, Math.ceil(count / MOST_PLACES));
+	const places = Array.from({ length: Math.ceil(count / every) }, (_, i) => i * every);
 	const blocked = show.venue.blocked.map(
 		({ min: low, max: high }) =>
 			html`<rect x="${low[0].toFixed(1)}" y="${(-high[1]).toFixed(1)}" width="${(high[0] - low[0]).toFixed(1)}" height="${(high[1] - low[1]).toFixed(1)}" class="blocked"/>`,
