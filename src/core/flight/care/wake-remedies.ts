@@ -30,14 +30,19 @@ const TILTS = [10, 15, 20];
 export function wakeRemedies(show: Show, formation: Formation, before: Float64Array): WakeRemedy[] {
 	const under = countUnder(countAbove(before, show.fleet.wake));
 	if (under === 0) return [];
-	return [tilt(show, formation, under), offsetRows(show, formation, before, under)].filter((found) => found !== null);
+	return [tilt(show, formation, before, under), offsetRows(show, formation, before, under)].filter(
+		(found) => found !== null,
+	);
 }
 
 /** What a changed formation comes to; null where it breaks spacing or leaves the venue. */
-function tryOut(show: Show, formation: Formation): { readonly after: number; readonly gap: number } | null {
+function tryOut(
+	show: Show,
+	formation: Formation,
+): { readonly after: number; readonly gap: number; readonly height: number } | null {
 	const { fleet, venue } = show;
 	const { limits } = fleet;
-	const { all } = fillFleet(slotsOf(formation, limits.downwash), fleet, venue);
+	const { all, count } = fillFleet(slotsOf(formation, limits.downwash), fleet, venue);
 	const gap = smallestGap(all, limits.downwash).distance;
 	if (gap < limits.spacing - GAP_TOLERANCE) return null;
 	for (let k = 0; k < all.length; k += 3) {
@@ -45,11 +50,22 @@ function tryOut(show: Show, formation: Formation): { readonly after: number; rea
 			[0, 1, 2].every((axis) => all[k + axis] >= min[axis] && all[k + axis] <= max[axis]);
 		if (!within(venue.volume) || venue.blocked.some(within)) return null;
 	}
-	return { after: countUnder(countAbove(all, fleet.wake)), gap };
+	return { after: countUnder(countAbove(all, fleet.wake)), gap, height: heightOf(all, count) };
+}
+
+/** Metres from the lowest to the highest of the picture's slots. */
+function heightOf(places: Float64Array, count: number): number {
+	let [low, high] = [Number.POSITIVE_INFINITY, Number.NEGATIVE_INFINITY];
+	for (let k = 2; k < 3 * count; k += 3) {
+		low = Math.min(low, places[k]);
+		high = Math.max(high, places[k]);
+	}
+	return high - low;
 }
 
 /** The smallest tilt that parts all rows, else the one that leaves the fewest drones under others. */
-function tilt(show: Show, formation: Formation, before: number): WakeRemedy | null {
+function tilt(show: Show, formation: Formation, places: Float64Array, before: number): WakeRemedy | null {
+	const height = heightOf(places, slotsOf(formation, show.fleet.limits.downwash).count);
 	let best: WakeRemedy | null = null;
 	for (const degrees of TILTS) {
 		for (const lean of [-degrees, degrees]) {
@@ -61,7 +77,7 @@ function tilt(show: Show, formation: Formation, before: number): WakeRemedy | nu
 				kind: "tilt",
 				formation: formation.id,
 				change: `Tilt ${named(formation)} by ${degrees}°, ${away}.`,
-				cost: `${left(found.after, before)}; seen from the front it is ${((1 - Math.cos((degrees * Math.PI) / 180)) * 100).toFixed(1)} % lower.`,
+				cost: `${left(found.after, before)}; seen from the front it is ${foreshortened(found.height, height)}.`,
 				before,
 				after: found.after,
 				gap: found.gap,
@@ -140,6 +156,13 @@ function hexOf(colours: Uint8Array): string[] {
 		const bytes = Array.from(colours.subarray(3 * i, 3 * i + 3), (byte) => byte.toString(16).padStart(2, "0"));
 		return `#${bytes.join("")}`;
 	});
+}
+
+/** "1.5 % lower"; of a picture that lies flat, how high it becomes. */
+function foreshortened(after: number, before: number): string {
+	if (before < 0.1) return `${after.toFixed(1)} m high`;
+	const percent = 100 * (after / before - 1);
+	return `${Math.abs(percent).toFixed(1)} % ${percent > 0 ? "higher" : "lower"}`;
 }
 
 function named(formation: Formation): string {

@@ -82,6 +82,11 @@ describe("standing in the wake of others", () => {
 		}
 	});
 
+	it("says what a tilt costs: the wall of three rises of 3.1 m is lower by 1 − cos 10° from the front", () => {
+		const [remedy] = care.wakeRemedies;
+		expect(remedy.cost).toContain(`${(100 * (1 - Math.cos(Math.PI / 18))).toFixed(1)} % lower`);
+	});
+
 	it("offers none that leaves the venue", () => {
 		const thin: Show = { ...show, venue: { ...show.venue, volume: { min: [-100, 49, 0], max: [100, 51, 120] } } };
 		const found = careFor(thin, slots, flight);
