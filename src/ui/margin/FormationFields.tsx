@@ -1,3 +1,4 @@
+import { useEffect, useRef } from "react";
 import { sizeToSpacing } from "../../core/formation/index.ts";
 import type { Formation, Shape } from "../../core/show/index.ts";
 import { ChoiceField, NumberField, TextField } from "../fields/Field.tsx";
@@ -29,10 +30,15 @@ export function FormationFields({ formation }: { formation: Formation }) {
 	const failing = verdict !== null && !verdict.verdicts.includes("flies");
 	const inquired = useLookInto("formation", failing ? formation.id : null);
 	const show = useStudioState((state) => state.show);
+	const top = useRef<HTMLElement>(null);
+	// Who comes here to mend it sees at once what would.
+	useEffect(() => {
+		if (failing) top.current?.scrollIntoView({ block: "start" });
+	}, [failing]);
 	const { shape, place } = formation;
 	const set = (next: Shape) => commands.changeFormation(formation.id, { shape: next });
 	return (
-		<section className="formation-fields" aria-label={`Formation ${formation.name || formation.id}`}>
+		<section ref={top} className="formation-fields" aria-label={`Formation ${formation.name || formation.id}`}>
 			<h3>{formation.name || formation.id}</h3>
 			{failing && show && (
 				<>

@@ -24,6 +24,13 @@ export function LegLook({ check, show, waiting }: { check: TransitionCheck; show
 	return (
 		<div className="leg-look" ref={place}>
 			<p>{waiting ? "Being checked." : sayWhy(check, show)}</p>
+			{!flies && !isCue && !waiting && (
+				<p>
+					{check.id === "launch" ? "Launch" : "Landing"} is planned from the take-off grid: move the grid, or the
+					formation {check.id === "launch" ? "that the fleet waits in" : "that the show ends in"}, so that the way
+					between them is clear.
+				</p>
+			)}
 			{!flies && isCue && !waiting && <Remedies own={check.remedies} inquired={inquired} />}
 			{inquired?.traces ? (
 				<TracePlots traces={inquired.traces} limits={show.fleet.limits} />

@@ -98,7 +98,7 @@ function parted({ show }: TrialBase, formation: Formation, slots: FleetSlots): D
 		{
 			kind: "part-slots",
 			change: `Push apart the slots of ${nameOf(show, formation.id)} that stand too near.`,
-			cost: `${moved} of ${slots.count} slots move, by ${apart.furthest.toFixed(2)} m at most; the size stays.${kept}`,
+			cost: `${moved} of ${slots.count} slots move, by ${apart.furthest.toFixed(2)} m at most; the picture is ${extentOf(apart).toFixed(1)} m instead of ${extentOf(slots).toFixed(1)} m across.${kept}`,
 			loss: 0.1 + Math.min(0.5, apart.furthest / Math.max(1, extentOf(slots))) + (kept === "" ? 0 : 0.05),
 			to: {
 				shape: { kind: "points", points },
