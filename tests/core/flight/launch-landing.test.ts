@@ -1,6 +1,6 @@
 import { describe, expect, it } from "vitest";
 import { airtimeOf } from "../../../src/core/flight/care/airtime.ts";
-import { dronePositions, flyShow } from "../../../src/core/flight/index.ts";
+import { careFor, dronePositions, flyShow, sayCare } from "../../../src/core/flight/index.ts";
 import { fleetSlotsOf, takeoffSlots } from "../../../src/core/formation/index.ts";
 import { readShow } from "../../../src/core/show/index.ts";
 
@@ -12,7 +12,7 @@ const show = readShow(
 		format: "starstave-show",
 		version: 1,
 		title: "dense grid",
-		fleet: { count: 36 },
+		fleet: { count: 36, wake: { radius: 0.8, reach: 8 } },
 		venue: { volume: { min: [-60, 0, 0], max: [60, 80, 100] } },
 		takeoff: {
 			shape: { kind: "grid", columns: 6, rows: 6, pitch: PITCH },
@@ -26,7 +26,8 @@ const show = readShow(
 		],
 	}),
 );
-const { flight, check } = flyShow(show, fleetSlotsOf(show), takeoffSlots(show));
+const slots = fleetSlotsOf(show);
+const { flight, check } = flyShow(show, slots, takeoffSlots(show));
 const positions = new Float64Array(3 * flight.drones);
 
 /** Smallest distance, by brute force, of two drones that are both in the air, in the measure of spacing. */
@@ -78,6 +79,32 @@ describe("launch and landing on a grid denser than the spacing", () => {
 				expect(speed).toBeLessThanOrEqual((positions[k] <= 4 ? 0.5 : 1.5) + 1e-6);
 			}
 		}
+	});
+
+	it("are told to wait in each other's wake where the layers over the grid stand close, and for how long", () => {
+		const holds = careFor(show, slots, flight).wakeHolds.filter(({ where }) => where !== "show");
+		expect(holds.map(({ where }) => where)).toEqual(["launch", "landing"]);
+		const { delays, departs, arrives, plan } = flight.legs[0];
+		dronePositions(flight, arrives - 1e-6, positions);
+		// By brute force: the upper goes first, so the lower stands under it from when it is up itself.
+		let longest = 0;
+		const under = new Set<number>();
+		for (let i = 0; i < 36; i++) {
+			for (let j = 0; j < 36; j++) {
+				const rise = positions[3 * j + 2] - positions[3 * i + 2];
+				const aside = Math.hypot(positions[3 * j] - positions[3 * i], positions[3 * j + 1] - positions[3 * i + 1]);
+				if (rise < 0.1 || rise > 8 || aside > 0.8) continue;
+				const from = departs + plan.shortest + Math.max(delays![i], delays![j]);
+				if (arrives - from < 1e-6) continue;
+				under.add(i);
+				longest = Math.max(longest, arrives - from);
+			}
+		}
+		expect(under.size).toBeGreaterThan(0);
+		expect(holds[0].drones).toBe(under.size);
+		expect(holds[0].to - holds[0].from).toBeCloseTo(longest, 6);
+		const topic = sayCare(show, careFor(show, slots, flight)).find(({ id }) => id === "wake");
+		expect(topic?.sentences.join(" ")).toContain("Over the take-off grid, while the waves of landing wait,");
 	});
 
 	it("count each drone's motor time from its own wave: the first up wait longest", () => {

@@ -77,7 +77,9 @@ export function careOf(): Care {
 			impact: { ...from, energy: 60, speed: 15.5, height: 40, marks },
 			step: 0.25,
 		},
-		wakeHolds: [{ formation: "f2", cue: "c3", from: 16.5, to: 26, drones: 4, worst: { drone: 2, above: 2 } }],
+		wakeHolds: [
+			{ where: "show", formation: "f2", cue: "c3", from: 16.5, to: 26, drones: 4, worst: { drone: 2, above: 2 } },
+		],
 		wakeRemedies: [
 			{
 				kind: "tilt",

@@ -25,7 +25,8 @@ export interface Care {
 export function careFor(show: Show, slots: ReadonlyMap<string, FleetSlots>, flight: ShowFlight): Care {
 	const placesOf = (id: string): Float64Array => slots.get(id)?.all ?? new Float64Array(0);
 	const holds = wakeHolds(show, flight, placesOf);
-	const formations = [...new Set(holds.map(({ formation }) => formation))];
+	const inShow = holds.filter(({ where }) => where === "show");
+	const formations = [...new Set(inShow.map(({ formation }) => formation))];
 	return {
 		fallZone: findFallZone(show, flight),
 		wakeHolds: holds,

@@ -3,6 +3,7 @@ import type { Airtime } from "./airtime.ts";
 import type { AsFlown, LegAsFlown } from "./as-flown.ts";
 import type { Care } from "./care.ts";
 import type { BorderSide, FallZone } from "./fall-zone.ts";
+import type { WakeHold } from "./wake.ts";
 
 /** One matter of care in plain words, for screen, command line and report alike. */
 export interface CareTopic {
@@ -126,13 +127,20 @@ function nameOf(show: Show, id: string): string {
 	return find(show.formations, id)?.name || id;
 }
 
+function placeOf(show: Show, { where, formation, cue }: WakeHold): string {
+	if (where === "launch") return "Over the take-off grid, while the waves of launch gather,";
+	if (where === "landing") return "Over the take-off grid, while the waves of landing wait,";
+	const after = cue === null ? "in the opening" : `after cue ${find(show.cues, cue)?.number ?? cue}`;
+	return `In ${nameOf(show, formation)}, ${after},`;
+}
+
 function sayWake(show: Show, care: Care): CareTopic {
 	const { radius, reach } = show.fleet.wake;
 	const holds = [...care.wakeHolds].sort((a, b) => b.drones * (b.to - b.from) - a.drones * (a.to - a.from));
 	const sentences = holds.map((hold) => {
-		const cue = hold.cue === null ? "in the opening" : `after cue ${find(show.cues, hold.cue)?.number ?? hold.cue}`;
 		const stack = hold.worst.above > 1 ? `, drone ${hold.worst.drone + 1} under ${hold.worst.above} of them` : "";
-		return `In ${nameOf(show, hold.formation)}, ${cue}, ${count(hold.drones, "drone stands", "drones stand")} in the wake of others for ${(hold.to - hold.from).toFixed(1)} s${stack}.`;
+		const upTo = hold.where === "show" ? "" : "up to ";
+		return `${placeOf(show, hold)} ${count(hold.drones, "drone stands", "drones stand")} in the wake of others for ${upTo}${(hold.to - hold.from).toFixed(1)} s${stack}.`;
 	});
 	return {
 		id: "wake",
