@@ -41,6 +41,7 @@ interface Answer {
 
 /** Milliseconds of quiet before anything is looked for: a drag checks many times a second. */
 const QUIET = 200;
+const NO_PATHS = new Float64Array(0);
 /** Answers that are kept: going back to a cue, or undoing, asks nothing again. */
 const MOST_KEPT = 60;
 
@@ -84,11 +85,13 @@ export function createInquiry({ store, workers, ledger, notices }: InquiryParts)
 		const searches = searchesFor(asked, check);
 		if (searches.length > 0) {
 			put(answer, true);
+			// Paths are by far the most of a flight, and remedies plan anew: a show of many transitions crosses in no time.
+			const slim = { ...flight, legs: flight.legs.map((leg) => ({ ...leg, plan: { ...leg.plan, paths: NO_PATHS } })) };
 			const find = async (cancelled: AbortSignal, report: ReportShare): Promise<void> => {
 				// One after the other, so that planning always finds a worker free.
 				for (const [k, search] of searches.entries()) {
 					report(k / searches.length, searchName(search));
-					const ask = { show, slots, flight, check, id: asked.id, search };
+					const ask = { show, slots, flight: slim, check, id: asked.id, search };
 					take(await workers.run("remedies", ask, { signal: AbortSignal.any([signal, cancelled]) }));
 					put(answer, true);
 				}

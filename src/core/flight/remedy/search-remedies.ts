@@ -16,7 +16,7 @@ export type RemedySearch = (typeof REMEDY_SEARCHES)[number];
  * Looks for remedies of one transition that doesn't fly, in one way. Every remedy found has been applied to the show,
  * and every leg that it touches planned and proven: it makes the transition fly, and nothing that flew stops flying.
  * Remedies in time alone are part of the check itself.
- * @param flight of the show, as it was checked
+ * @param flight of the show, as it was checked; paths of its plans may be left out
  * @param id of the transition's cue
  * @returns none where the transition flies, or where nothing of the kind helps
  */
@@ -30,7 +30,7 @@ export function searchRemedies(
 ): Found[] {
 	const transition = check.transitions.find((one) => one.id === id);
 	if (transition === undefined || transition.verdicts.includes("flies")) return [];
-	const base = trialBase(show, slots, flight, failingLegs(check));
+	const base = trialBase(show, slots, flight, check);
 	if (search === "way") return goByWay(base, transition);
 	const found = reshape(base, transition, search satisfies Reshaping);
 	// An end in which the fleet can't stand at all is mended first, and only then the flight.
@@ -58,10 +58,5 @@ export function mendedFormation(
 	check: ShowCheck,
 	id: string,
 ): Found[] {
-	return mendFormation(trialBase(show, slots, flight, failingLegs(check)), id);
-}
-
-export function failingLegs({ launch, landing, transitions }: ShowCheck): Set<string> {
-	const legs = [launch, ...transitions, landing];
-	return new Set(legs.flatMap((leg) => (leg === null || leg.verdicts.includes("flies") ? [] : [leg.id])));
+	return mendFormation(trialBase(show, slots, flight, check), id);
 }

@@ -1,8 +1,9 @@
 import { fillFleet, slotsOf, takeoffSlots } from "../../formation/index.ts";
 import { applyEdit, type FleetSlots, type Formation, type Show } from "../../show/index.ts";
 import { GAP_TOLERANCE, LIMIT_TOLERANCE, StarstaveError } from "../../units/index.ts";
+import type { ShowCheck } from "../check.ts";
 import type { LegProblem } from "../leg-problem.ts";
-import type { Plan } from "../plan.ts";
+import type { Plan, Verdict } from "../plan.ts";
 import { planLeg } from "../plan-leg.ts";
 import { neededTime, provePlanOnce } from "../proof/prove-plan.ts";
 import { assembleFlight } from "../show/assemble-flight.ts";
@@ -16,10 +17,12 @@ export interface TrialBase {
 	readonly slots: ReadonlyMap<string, FleetSlots>;
 	/** 3·N metres on the take-off grid. */
 	readonly ground: Float64Array;
-	/** By key of their problems: of every leg. */
+	/** By key of their problems: of every leg. Their paths are not needed, and may be left out. */
 	readonly plans: ReadonlyMap<string, Plan>;
 	/** Ids of legs that don't fly as the show stands. */
 	readonly failing: ReadonlySet<string>;
+	/** Those of them that break spacing or venue, which no duration mends. */
+	readonly unclear: ReadonlySet<string>;
 }
 
 /** A show with its flight, as a base for trials. */
@@ -27,7 +30,7 @@ export function trialBase(
 	show: Show,
 	slots: ReadonlyMap<string, FleetSlots>,
 	flight: ShowFlight,
-	failing: ReadonlySet<string>,
+	check: ShowCheck,
 ): TrialBase {
 	const { ground, legs } = flight;
 	const plans = new Map<string, Plan>();
@@ -36,7 +39,20 @@ export function trialBase(
 	for (const [k, { key }] of main.slice(0, -1).entries()) plans.set(key, legs[k].plan);
 	if (main.length > 0) plans.set(main[main.length - 1].key, legs[legs.length - 1].plan);
 	for (const [k, { key }] of legProblems(show, slots, ground, plans).entries()) plans.set(key, legs[k].plan);
-	return { show, slots, ground, plans, failing };
+	const those = (broken: (verdicts: readonly Verdict[]) => boolean): Set<string> =>
+		new Set(
+			[check.launch, ...check.transitions, check.landing].flatMap((leg) =>
+				leg !== null && broken(leg.verdicts) ? [leg.id] : [],
+			),
+		);
+	return {
+		show,
+		slots,
+		ground,
+		plans,
+		failing: those((verdicts) => !verdicts.includes("flies")),
+		unclear: those((verdicts) => verdicts.includes("too-close") || verdicts.includes("out-of-venue")),
+	};
 }
 
 /** How one leg of the changed show comes out. */
@@ -101,7 +117,7 @@ export function tryOut(
 			plans.set(problem.key, plan);
 			made.set(problem.key, plan);
 		}
-		const outcome = judgeLeg(plan, problem, known !== undefined && !base.failing.has(problem.id));
+		const outcome = judgeLeg(plan, problem, known === undefined ? null : !base.unclear.has(problem.id));
 		if (known === undefined || must.includes(problem.id)) keep(outcomes, outcome);
 		return outcome;
 	};
@@ -127,13 +143,13 @@ export function tryOut(
 	return { show, slots, outcomes, plans: made };
 }
 
-/** @param trusted the leg keeps spacing and venue, as an earlier check has proven */
-function judgeLeg(plan: Plan, problem: LegProblem, trusted: boolean): LegOutcome {
+/** @param known whether it keeps spacing and venue, as an earlier check has proven; null: to be proven */
+function judgeLeg(plan: Plan, problem: LegProblem, known: boolean | null): LegOutcome {
 	const needed = neededTime(plan, problem);
 	const { available } = problem;
 	const inTime = available === null || needed <= available * (1 + LIMIT_TOLERANCE);
-	let clear = trusted;
-	if (!trusted && inTime) {
+	let clear = known ?? false;
+	if (known === null && inTime) {
 		const proof = provePlanOnce(plan, problem);
 		const parted = proof.gap === null || proof.gap.distance >= problem.limits.spacing - GAP_TOLERANCE;
 		clear = parted && proof.breach === null;
