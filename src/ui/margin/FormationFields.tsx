@@ -108,7 +108,7 @@ export function FormationFields({ formation }: { formation: Formation }) {
 				<button
 					type="button"
 					disabled={readOnly || limits === null}
-					onClick={() => limits && set(sizeToSpacing(shape, limits, 1.1))}
+					onClick={() => limits && set(sizeToSpacing(shape, limits, 1.1 / place.scale, place.tilt))}
 				>
 					Size to spacing
 				</button>
