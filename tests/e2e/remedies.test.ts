@@ -77,6 +77,8 @@ describe("verdicts and remedies", () => {
 		await remedy.focus();
 		await page.keyboard.press("Enter");
 		await page.getByText("2 of 2 fly").waitFor({ timeout: 60_000 });
+		// The keys stay with the leg.
+		expect(await page.evaluate(() => document.activeElement?.textContent)).toContain("Cue 1 · to far");
 		expect(await page.getByText("What would make it fly").count()).toBe(0);
 		await page.locator("body").click({ position: { x: 2, y: 2 } });
 		await page.keyboard.press("Control+z");

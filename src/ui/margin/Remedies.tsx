@@ -35,7 +35,11 @@ export function Remedies({ own, inquired }: { own: readonly Remedy[]; inquired: 
 								aria-label={`Apply: ${remedy.change}`}
 								onFocus={show}
 								onBlur={hide}
-								onClick={() => commands.applyRemedy(remedy)}
+								onClick={(event) => {
+									// The list goes away with what it mends: the keys stay at the leg that was looked into.
+									const row = event.currentTarget.closest(".leg-look")?.previousElementSibling;
+									if (commands.applyRemedy(remedy) && row instanceof HTMLElement) row.focus();
+								}}
 							>
 								Apply
 							</button>
