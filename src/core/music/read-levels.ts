@@ -9,7 +9,7 @@ import { priorOf } from "./walk-beats.ts";
 /** Log-odds are held within this. */
 const ODDS_LIMIT = 5;
 /** Log-odds from which a beat at a level is worth having: training weighed beats three times (ln 3), and a little. */
-const BEAT_WORTH = 1.5;
+const BEAT_WORTH = 1.8;
 /** Where the music is faint, a beat is worth having from this much below the clearer beats around. */
 const BELOW_CLEAR = 0.3;
 /** Beats on either side that count as around. */
