@@ -4,6 +4,7 @@ import { cueActions } from "./cue-actions.ts";
 import { desk, type MarginPage } from "./desk.ts";
 import type { FrameLoop } from "./frame-loop.ts";
 import { loopSection } from "./loop-section.ts";
+import { splitHere } from "./split-section.ts";
 import { zoomStrip } from "./zoom-strip.ts";
 
 /** Everything that can be done without pointing: one list for the menu, the command finder and the keyboard. */
@@ -301,11 +302,21 @@ function musicActions({ studio }: ActionParts, hasShow: () => boolean, canEdit: 
 			name: "Split the section at this bar",
 			theme: "Music",
 			available: canEdit,
-			run: () => {
-				const position = beatHere();
-				const section = store.getState().show?.sections.find((one) => position > one.from && position < one.to);
-				if (section) commands.splitSection(section.id, position);
-			},
+			run: () => splitHere(studio),
+		},
+		{
+			id: "coarser-sections",
+			name: "Coarser sections",
+			theme: "Music",
+			available: () => canEdit() && store.getState().analysis !== null,
+			run: () => commands.divideSections(-1),
+		},
+		{
+			id: "finer-sections",
+			name: "Finer sections",
+			theme: "Music",
+			available: () => canEdit() && store.getState().analysis !== null,
+			run: () => commands.divideSections(1),
 		},
 		{
 			id: "analysed-grid",

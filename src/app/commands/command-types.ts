@@ -102,6 +102,8 @@ export interface GridCommands {
 	/** The grid and sections as the analysis heard them. */
 	takeAnalysedGrid(): boolean;
 	setSections(sections: readonly Section[]): boolean;
+	/** Coarser or finer sections from what was heard, by so many levels; borders set by hand stay. */
+	divideSections(levels: 1 | -1): boolean;
 	renameSection(id: string, name: string): boolean;
 	setSectionLetter(id: string, letter: string): boolean;
 	moveSectionStart(id: string, beat: number): boolean;

@@ -15,6 +15,7 @@ import {
 	splitSection,
 } from "../../core/show/index.ts";
 import { gridOf, sectionsOf } from "../heard-grid.ts";
+import { levelOf, sectionsAt } from "../section-levels.ts";
 import type { Workbench } from "../workbench.ts";
 import type { GridCommands } from "./command-types.ts";
 
@@ -53,6 +54,30 @@ export function gridCommands(bench: Workbench): GridCommands {
 			);
 		},
 		setSections: (sections) => bench.edit("Change the sections", (draft) => setSections(draft, sections)) !== null,
+		divideSections: (levels) => {
+			const { show, analysis } = store.getState();
+			const level = show === null || analysis === null ? null : levelOf(analysis, show);
+			if (show === null || analysis === null || level === null) {
+				notices.say("caution", "Sections are divided by what was heard in the soundtrack, and nothing was.");
+				return false;
+			}
+			const now = JSON.stringify(show.sections);
+			for (let next = level + levels; next >= 0 && next < analysis.sectionLevels.length; next += levels) {
+				const sections = sectionsAt(analysis, next, show);
+				if (JSON.stringify(sections) === now) continue;
+				return (
+					bench.edit(levels > 0 ? "Finer sections" : "Coarser sections", (draft) => setSections(draft, sections)) !==
+					null
+				);
+			}
+			notices.say(
+				"caution",
+				levels > 0
+					? "These are the finest sections that were heard."
+					: "These are the coarsest sections that were heard.",
+			);
+			return false;
+		},
 		renameSection: (id, name) => bench.edit("Name a section", (draft) => renameSection(draft, id, name)) !== null,
 		setSectionLetter: (id, letter) =>
 			bench.edit("Set a section's letter", (draft) => setSectionLetter(draft, id, letter)) !== null,

@@ -15,7 +15,10 @@ import { levelOut, networkActivation } from "./network/index.ts";
 import { type PlacedBeats, placeBeats } from "./place-beats.ts";
 
 /** Rises whenever the same samples would give another answer. */
-export const ANALYSIS_VERSION = 1;
+export const ANALYSIS_VERSION = 2;
+
+/** How fine sections are, from coarse to fine: all are kept, so that turning detail up asks for no new analysis. */
+export const SECTION_DETAILS = [0, 0.25, 0.5, 0.75, 1] as const;
 
 /** LU below the integrated loudness (and LUFS at all) under which there is nothing to beat time to. */
 const QUIET = -35;
@@ -62,6 +65,7 @@ export function analyse(sound: Sound, options: AnalyseOptions = {}): Analysis {
 	const edges = placed.bars.length > 0 ? barEdges(placed, length / sampleRate) : new Float64Array(0);
 	const likeness = compareBars(bands, harmony, edges);
 	const sections = divide(placed, likeness, edges, options.detail ?? 0.5);
+	const sectionLevels = SECTION_DETAILS.map((detail) => divide(placed, likeness, edges, detail));
 	const momentary = { values: loudness.momentary, rate: loudness.rate };
 	const moments = findMoments(placed.beats, placed.bars, momentary, curves);
 	tell(1, "done");
@@ -75,6 +79,7 @@ export function analyse(sound: Sound, options: AnalyseOptions = {}): Analysis {
 		beatConfidence: placed.confidence,
 		bars: placed.bars,
 		sections,
+		sectionLevels,
 		moments,
 		confidence: placed.overall,
 		loudness,

@@ -45,6 +45,8 @@ export interface Analysis {
 	/** One entry for every bar. */
 	readonly bars: readonly Bar[];
 	readonly sections: readonly MusicSection[];
+	/** The same music divided from coarse to fine, one entry for each of SECTION_DETAILS. */
+	readonly sectionLevels: readonly (readonly MusicSection[])[];
 	readonly moments: readonly Moment[];
 	/** 0..1 for the whole. */
 	readonly confidence: number;

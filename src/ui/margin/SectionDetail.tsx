@@ -2,11 +2,13 @@ import type { Section } from "../../core/show/index.ts";
 import { TextField } from "../fields/Field.tsx";
 import { PlaceField } from "../fields/PlaceField.tsx";
 import { sayPlace, saySeconds } from "../say-place.ts";
+import { splitHere } from "../split-section.ts";
 import { useStudio, useStudioState } from "../studio-context.ts";
 import { useBeatMap } from "../use-frame.ts";
 
 export function SectionDetail({ section }: { section: Section }) {
-	const { commands } = useStudio();
+	const studio = useStudio();
+	const { commands } = studio;
 	const beatMap = useBeatMap();
 	const readOnly = useStudioState((state) => state.readOnly !== null);
 	const [from, to] = [beatMap.secondsAt(section.from), beatMap.secondsAt(section.to)];
@@ -47,6 +49,15 @@ export function SectionDetail({ section }: { section: Section }) {
 				</button>
 				<button type="button" disabled={readOnly} onClick={() => commands.joinSections(section.id)}>
 					Join with the next
+				</button>
+				<button type="button" disabled={readOnly} onClick={() => splitHere(studio)}>
+					Split at the playhead
+				</button>
+				<button type="button" disabled={readOnly} onClick={() => commands.divideSections(-1)}>
+					Coarser sections
+				</button>
+				<button type="button" disabled={readOnly} onClick={() => commands.divideSections(1)}>
+					Finer sections
 				</button>
 			</div>
 		</>

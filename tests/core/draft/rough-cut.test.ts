@@ -38,6 +38,7 @@ function analysisOf(plan: readonly (readonly [letter: string, beats: number, lou
 		beatConfidence: new Float32Array(total).fill(0.9),
 		bars: Array.from({ length: Math.ceil(total / 4) }, (_, i) => ({ beat: 4 * i, beatsPerBar: 4 })),
 		sections,
+		sectionLevels: [sections],
 		moments: [],
 		confidence: 0.9,
 		loudness: { integrated: -14, momentary: values, shortTerm: values, rate },
