@@ -42,12 +42,16 @@ export function Verdicts() {
 		},
 		[commands, store],
 	);
-	if (!check || !show)
+	if (!check || !show) {
+		const waits = (show?.formations.order.length ?? 0) > 0;
 		return (
-			<p className="quiet">
-				Nothing has been checked yet: a show with two formations and a transition has something to check.
+			<p className="quiet" role="status">
+				{waits
+					? "The show is being planned and checked: its verdicts stand here when that is done."
+					: "Nothing has been checked yet: a show with two formations and a transition has something to check."}
 			</p>
 		);
+	}
 	const legs = [check.launch, ...check.transitions, check.landing].filter(
 		(one): one is TransitionCheck => one !== null,
 	);
