@@ -15,7 +15,7 @@ import { smallestSeparation } from "./proof/separation.ts";
 import { findBreach } from "./proof/venue.ts";
 
 /** Rises whenever the same problem would give another plan. */
-export const PLANNER_VERSION = 3;
+export const PLANNER_VERSION = 4;
 
 /** A plan this near to the straight-line bound is not bettered by further tries. */
 const ENOUGH = 1.02;

@@ -34,7 +34,7 @@ export interface Parted {
 }
 
 /** Projections of every approach between two looks. */
-const SWEEPS = 10;
+const SWEEPS = 16;
 /** Approaches are searched for anew every so many looks; in between the known ones are followed. */
 const SEARCH = 4;
 /** Approaches under this many gaps are kept in mind between two looks. */
