@@ -103,6 +103,7 @@ export async function replaceShow(
 		soundNotes: [],
 		analysis: null,
 		newEdit: null,
+		taps: null,
 		afterEdit: null,
 		selection: { kind: "nothing" },
 	});

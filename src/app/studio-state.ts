@@ -75,6 +75,8 @@ export interface StudioState {
 	readonly inquired: Inquired | null;
 	/** A new edit of the soundtrack that is being looked at; null: none. */
 	readonly newEdit: NewEdit | null;
+	/** Seconds heard at each tap along with the music; null: nobody is tapping. */
+	readonly taps: readonly number[] | null;
 	/** What the last new edit that was taken over has come to, as long as it stands; null: none. */
 	readonly afterEdit: AfterEdit | null;
 	/** The part of playing that doesn't change with every frame; where the ear is, says `player.heardAt`. */

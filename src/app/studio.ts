@@ -59,6 +59,7 @@ export function createStudio(parts: StudioParts): Studio {
 		unchecked: new Set(),
 		inquired: null,
 		newEdit: null,
+		taps: null,
 		afterEdit: null,
 		playback: parts.player.state,
 		selection: { kind: "nothing" },

@@ -1,5 +1,6 @@
 import type { TransitionCheck } from "../core/flight/index.ts";
 import type { Analysis } from "../core/music/index.ts";
+import { DOUBTFUL } from "../core/music/index.ts";
 import { type BeatMap, createBeatMap, endOfShow, type Show } from "../core/show/index.ts";
 import { type Inks, readInks } from "./inks.ts";
 import { layLanes } from "./lanes.ts";
@@ -87,7 +88,7 @@ export function createStaves(host: HTMLElement, handlers: StavesHandlers): Stave
 		}
 		const unsure = new Set<number>();
 		analysis?.beatConfidence.forEach((confidence, beat) => {
-			if (confidence < 0.3 && show.grid.source === "analysed") unsure.add(beat);
+			if (confidence < DOUBTFUL && show.grid.source === "analysed") unsure.add(beat);
 		});
 		const moments = (analysis?.moments ?? []).map((moment) => ({ at: moment.beat, kind: moment.kind }));
 		while (rows.length > windows.length) rows.pop()?.destroy();

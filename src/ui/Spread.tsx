@@ -7,6 +7,7 @@ import { EmptyDesk } from "./EmptyDesk.tsx";
 import { KeysList } from "./KeysList.tsx";
 import { attachKeyboard } from "./keyboard.ts";
 import { Masthead } from "./Masthead.tsx";
+import { MetreQuestion } from "./MetreQuestion.tsx";
 import { Margin } from "./margin/Margin.tsx";
 import { NightPane } from "./NightPane.tsx";
 import { Notices } from "./Notices.tsx";
@@ -14,6 +15,7 @@ import { NewEditPane } from "./new-edit/NewEditPane.tsx";
 import { RoughCutQuestion } from "./RoughCutQuestion.tsx";
 import { StavesPane } from "./StavesPane.tsx";
 import { useStudio, useStudioState } from "./studio-context.ts";
+import { Tapping } from "./Tapping.tsx";
 import { TransportBar } from "./TransportBar.tsx";
 import { useFrameLoop } from "./use-frame.ts";
 
@@ -101,6 +103,8 @@ export function Spread() {
 			</div>
 			<Notices />
 			<RoughCutQuestion />
+			<MetreQuestion />
+			<Tapping />
 			<CommandFinder actions={actions} />
 			<KeysList actions={actions} />
 			{dropping && <div className="drop-veil">Let go to open the soundtrack or show</div>}

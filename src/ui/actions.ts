@@ -5,6 +5,7 @@ import { desk, type MarginPage } from "./desk.ts";
 import type { FrameLoop } from "./frame-loop.ts";
 import { loopSection } from "./loop-section.ts";
 import { splitHere } from "./split-section.ts";
+import { toDoubt } from "./to-doubt.ts";
 import { zoomStrip } from "./zoom-strip.ts";
 
 /** Everything that can be done without pointing: one list for the menu, the command finder and the keyboard. */
@@ -212,6 +213,14 @@ function musicActions({ studio }: ActionParts, hasShow: () => boolean, canEdit: 
 		commands.selectCue(cue.id);
 		commands.seek(map.secondsAt(cuePosition(cue, map)));
 	};
+	const positionHere = () => beatMap().positionAt(studio.player.heardAt(performance.now()));
+	const nudge = (seconds: number) => {
+		const beat = beatHere();
+		const at = store.getState().show?.grid.beats[beat];
+		if (at === undefined || !commands.moveBeat(beat, at + seconds)) return;
+		// The ear goes with it, so that the next press moves the same beat.
+		if (!store.getState().playback.playing) commands.seek(at + seconds);
+	};
 	const beatHere = () => Math.round(beatMap().positionAt(studio.player.heardAt(performance.now())));
 	return [
 		{
@@ -274,6 +283,62 @@ function musicActions({ studio }: ActionParts, hasShow: () => boolean, canEdit: 
 			theme: "Music",
 			available: canEdit,
 			run: () => commands.setDownbeat(beatHere()),
+		},
+		{
+			id: "metre",
+			name: "Metre from this beat on …",
+			theme: "Music",
+			available: canEdit,
+			run: () => desk.setState({ asksMetre: true }),
+		},
+		{
+			id: "tap",
+			name: "Tap a beat along with the music",
+			keys: "J",
+			theme: "Music",
+			available: canEdit,
+			run: () => {
+				if (!store.getState().playback.playing) void commands.play();
+				commands.tapBeat();
+			},
+		},
+		{
+			id: "beat-earlier",
+			name: "This beat 10 ms earlier",
+			keys: ",",
+			theme: "Music",
+			available: canEdit,
+			run: () => nudge(-0.01),
+		},
+		{
+			id: "beat-later",
+			name: "This beat 10 ms later",
+			keys: ".",
+			theme: "Music",
+			available: canEdit,
+			run: () => nudge(0.01),
+		},
+		{
+			id: "insert-beat",
+			name: "Put a beat in after this one",
+			theme: "Music",
+			available: canEdit,
+			run: () => commands.insertBeat(Math.floor(positionHere() + 1e-3)),
+		},
+		{
+			id: "delete-beat",
+			name: "Take this beat out",
+			theme: "Music",
+			available: canEdit,
+			run: () => commands.deleteBeat(beatHere()),
+		},
+		{
+			id: "doubtful",
+			name: "To the next doubtful place",
+			keys: "D",
+			theme: "Music",
+			available: () => store.getState().analysis !== null,
+			run: () => toDoubt(studio),
 		},
 		{
 			id: "double",

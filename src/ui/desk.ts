@@ -16,6 +16,8 @@ export interface Desk {
 	readonly finder: boolean;
 	/** The rough cut's question is open. */
 	readonly asksRoughCut: boolean;
+	/** The question how many beats a bar has from here on is open. */
+	readonly asksMetre: boolean;
 	readonly keysShown: boolean;
 }
 
@@ -27,5 +29,6 @@ export const desk = createStore<Desk>(() => ({
 	ghost: null,
 	finder: false,
 	asksRoughCut: false,
+	asksMetre: false,
 	keysShown: false,
 }));

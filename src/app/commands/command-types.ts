@@ -97,7 +97,16 @@ export interface GridCommands {
 	setDownbeat(beat: number): boolean;
 	doubleBeats(): boolean;
 	halveBeats(): boolean;
+	/** The beats between it and those set by hand before follow. */
 	moveBeat(beat: number, seconds: number): boolean;
+	/** Half way between this beat and the next. */
+	insertBeat(after: number): boolean;
+	deleteBeat(beat: number): boolean;
+	/** A tap at what is heard now; the first begins a run of taps. */
+	tapBeat(): void;
+	/** The run of taps becomes beats, as one step of undo. */
+	takeTaps(): boolean;
+	dropTaps(): void;
 	setMetre(fromBeat: number, beatsPerBar: number, until?: number): boolean;
 	/** The grid and sections as the analysis heard them. */
 	takeAnalysedGrid(): boolean;

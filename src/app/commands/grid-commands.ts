@@ -1,8 +1,12 @@
+import { fitTaps } from "../../core/music/index.ts";
 import {
 	createBeatMap,
+	deleteBeat,
 	doubleBeats,
 	halveBeats,
+	insertBeat,
 	joinSections,
+	layBeats,
 	moveBeat,
 	moveSectionStart,
 	renameSection,
@@ -38,6 +42,25 @@ export function gridCommands(bench: Workbench): GridCommands {
 		doubleBeats: () => bench.edit("Double the beats", doubleBeats) !== null,
 		halveBeats: () => bench.edit("Halve the beats", halveBeats) !== null,
 		moveBeat: (beat, seconds) => bench.edit("Move a beat", (draft) => moveBeat(draft, beat, seconds)) !== null,
+		insertBeat: (after) => bench.edit("Put a beat in", (draft) => insertBeat(draft, after)) !== null,
+		deleteBeat: (beat) => bench.edit("Take a beat out", (draft) => deleteBeat(draft, beat)) !== null,
+		tapBeat: () => {
+			if (!bench.mayEdit()) return;
+			const { player } = bench.parts;
+			const heard = player.heardAt(performance.now());
+			store.setState(({ taps }) => ({ taps: [...(taps ?? []), heard] }));
+		},
+		takeTaps: () => {
+			const { taps, analysis } = store.getState();
+			const fit = taps === null ? null : fitTaps(taps, analysis?.beats ?? []);
+			if (fit === null) {
+				notices.say("caution", "A few more taps are needed, at least six along with the music.");
+				return false;
+			}
+			store.setState({ taps: null });
+			return bench.edit("Beats tapped along", (draft) => layBeats(draft, fit.beats)) !== null;
+		},
+		dropTaps: () => store.setState({ taps: null }),
 		setMetre: (fromBeat, beatsPerBar, until) =>
 			bench.edit("Set the metre", (draft) => setMetre(draft, fromBeat, beatsPerBar, until)) !== null,
 		takeAnalysedGrid: () => {

@@ -23,7 +23,7 @@ export const SECTION_DETAILS = [0, 0.25, 0.5, 0.75, 1] as const;
 /** LU below the integrated loudness (and LUFS at all) under which there is nothing to beat time to. */
 const QUIET = -35;
 /** Confidence below which beats are given only with a word of caution, and none at all. */
-const DOUBTFUL = 0.35;
+export const DOUBTFUL = 0.35;
 const NO_BEAT = 0.12;
 
 export interface AnalyseOptions {

@@ -16,6 +16,8 @@ export interface Grid {
 	/** One entry for every bar, rising by `beat` (an index into `beats`). */
 	readonly bars: readonly Bar[];
 	readonly source: "analysed" | "edited";
+	/** Indices of beats that were set by hand, rising. */
+	readonly anchors?: readonly number[] | undefined;
 }
 
 /** The document in memory. Unknown keys of the file ride along untouched. */

@@ -8,7 +8,13 @@ import { checkCuesIn } from "./check-part.ts";
 /** Replaces the grid whole. Cues keep their positions, so they move with their beats; pinned ones stay. */
 export function setGrid(draft: DraftShow, grid: Grid): void {
 	requireGrid(grid.beats, grid.bars);
-	draft.grid = { ...grid, beats: [...grid.beats], bars: grid.bars.map((bar) => ({ ...bar })) };
+	const { anchors, ...rest } = grid;
+	draft.grid = {
+		...rest,
+		beats: [...grid.beats],
+		bars: grid.bars.map((bar) => ({ ...bar })),
+		...(anchors === undefined ? {} : { anchors: [...anchors] }),
+	};
 	checkCuesIn(draft);
 }
 
@@ -57,6 +63,13 @@ function scalePositions(draft: DraftShow, map: (position: number) => number, fac
 	}
 }
 
+/** Anchors go to where their beats are now; those whose beat is gone are anchors no more. */
+function moveAnchors(draft: DraftShow, map: (anchor: number) => number): void {
+	const { anchors } = draft.grid;
+	if (anchors !== undefined)
+		draft.grid.anchors = anchors.map(map).filter((anchor) => Number.isInteger(anchor) && anchor >= 0);
+}
+
 /** Twice as many beats, in as many beats to the bar; everything keeps its place in the music. */
 export function doubleBeats(draft: DraftShow): void {
 	requireBeats(draft, 2, "doubling");
@@ -73,6 +86,7 @@ export function doubleBeats(draft: DraftShow): void {
 		for (let beat = 2 * bar.beat; beat < next; beat += bar.beatsPerBar) bars.push({ ...bar, beat });
 	});
 	scalePositions(draft, (position) => 2 * position, 2);
+	moveAnchors(draft, (anchor) => 2 * anchor);
 	edited(draft, beats, bars);
 }
 
@@ -90,16 +104,8 @@ export function halveBeats(draft: DraftShow): void {
 			bars.push({ ...bar, beat });
 	}
 	scalePositions(draft, (position) => (position - odd) / 2, 0.5);
+	moveAnchors(draft, (anchor) => (anchor - odd) / 2);
 	edited(draft, beats, bars);
-}
-
-/** Moves one beat in time, between its neighbours. */
-export function moveBeat(draft: DraftShow, index: number, seconds: number): void {
-	const beats = [...draft.grid.beats];
-	if (!(index in beats))
-		throw new StarstaveError("show", `The grid has no beat ${index}; it has ${beats.length}, counted from 0.`);
-	beats[index] = seconds;
-	edited(draft, beats, draft.grid.bars);
 }
 
 /**

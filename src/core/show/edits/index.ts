@@ -1,4 +1,5 @@
 export { applyEdit, type DraftShow, type EditResult, patchShow } from "./apply-edit.ts";
+export { deleteBeat, insertBeat, layBeats, moveBeat } from "./beats-by-hand.ts";
 export {
 	addCue,
 	type CueChange,
@@ -24,7 +25,7 @@ export {
 	setVenue,
 } from "./document-edits.ts";
 export { addFormation, changeFormation, copyFormation, type NewFormation, removeFormation } from "./formation-edits.ts";
-export { doubleBeats, halveBeats, moveBeat, setGrid, setMetre, shiftBars, shiftBeats } from "./grid-edits.ts";
+export { doubleBeats, halveBeats, setGrid, setMetre, shiftBars, shiftBeats } from "./grid-edits.ts";
 export { newId } from "./new-id.ts";
 export {
 	joinSections,

@@ -22,6 +22,8 @@ export const grid = v.looseObject({
 	/** One entry for every bar, rising. */
 	bars: v.optional(v.array(bar), []),
 	source: v.optional(v.picklist(["analysed", "edited"], "must be analysed or edited"), "analysed"),
+	/** Indices of beats that were set by hand: what is moved beside them stops there. */
+	anchors: v.optional(v.array(whole(0, 1e6))),
 });
 export const section = v.looseObject({
 	id,
