@@ -1,5 +1,6 @@
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import { openStage, type Stage } from "./browser.ts";
+import { writeRamp } from "./ramp.ts";
 
 /**
  * Sound and screen in step, measured on the audio itself: the soundtrack is a ramp, so that each sample says where in
@@ -7,29 +8,6 @@ import { openStage, type Stage } from "./browser.ts";
  * that the masthead shows in the same frame (the night view is drawn from the same instant).
  */
 const SECONDS = 60;
-
-function writeRamp(): Buffer {
-	const rate = 48000;
-	const count = SECONDS * rate;
-	const bytes = Buffer.alloc(58 + 4 * count);
-	bytes.write("RIFF", 0);
-	bytes.writeUInt32LE(50 + 4 * count, 4);
-	bytes.write("WAVEfmt ", 8);
-	bytes.writeUInt32LE(18, 16);
-	bytes.writeUInt16LE(3, 20);
-	bytes.writeUInt16LE(1, 22);
-	bytes.writeUInt32LE(rate, 24);
-	bytes.writeUInt32LE(rate * 4, 28);
-	bytes.writeUInt16LE(4, 32);
-	bytes.writeUInt16LE(32, 34);
-	bytes.write("fact", 38);
-	bytes.writeUInt32LE(4, 42);
-	bytes.writeUInt32LE(count, 46);
-	bytes.write("data", 50);
-	bytes.writeUInt32LE(4 * count, 54);
-	for (let i = 0; i < count; i++) bytes.writeFloatLE((0.9 * i) / count, 58 + 4 * i);
-	return bytes;
-}
 
 /** Runs in the page before the app: whatever is led to the loudspeaker is led to an analyser too. */
 function tapLoudspeaker(): void {
@@ -86,7 +64,7 @@ describe("sound and screen", () => {
 		await page.reload();
 		await page
 			.getByLabel("Open a soundtrack or a show", { exact: true })
-			.setInputFiles({ name: "ramp.wav", mimeType: "audio/wav", buffer: writeRamp() });
+			.setInputFiles({ name: "ramp.wav", mimeType: "audio/wav", buffer: writeRamp(SECONDS, 48000) });
 		await page.getByText("ramp", { exact: false }).first().waitFor();
 		const play = page.getByRole("button", { name: "Play" });
 		await page.waitForFunction(() => !document.querySelector(".job"), undefined, { timeout: 60_000 });
