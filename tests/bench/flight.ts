@@ -43,7 +43,8 @@ for (const count of sizes.length > 0 ? sizes : [200, 500, 1000]) {
 			target: null,
 			delays: null,
 			limits,
-			volume: { min: [-600, -600, 0], max: [600, 600, 600] },
+			// The pairs are about one another: the largest reach below the ground and far out.
+			volume: { min: [-5000, -5000, -5000], max: [5000, 5000, 5000] },
 			blocked: [],
 			timeLaw: "s-curve",
 			available: null,

@@ -1,4 +1,4 @@
-import { GAP_TOLERANCE } from "../units/index.ts";
+import { GAP_TOLERANCE, TIGHT_SHARE } from "../units/index.ts";
 import { type Candidate, chooseAssignments } from "./capped.ts";
 import { lawForPaths } from "./law/fleet-law.ts";
 import { straightTime } from "./law/straight-time.ts";
@@ -15,7 +15,7 @@ import { smallestSeparation } from "./proof/separation.ts";
 import { findBreach } from "./proof/venue.ts";
 
 /** Rises whenever the same problem would give another plan. */
-export const PLANNER_VERSION = 4;
+export const PLANNER_VERSION = 5;
 
 /** A plan this near to the straight-line bound is not bettered by further tries. */
 const ENOUGH = 1.02;
@@ -26,6 +26,9 @@ const TRIES = 3;
 /** Times the straight flights' own duration at which parting is given up. */
 const LATEST = 3;
 const LOOKS = 300;
+/** Shares of the spacing from which more gap is worth having, and of the duration that it may cost. */
+const LEAST_ROOM = 1.02;
+const ROOM_COSTS = 1.01;
 
 /** What a candidate came to. */
 interface Outcome {
@@ -42,17 +45,19 @@ export function planLeg(problem: LegProblem, onProgress?: PlanProgress): Plan {
 	if (problem.target !== null) return planForced(problem, problem.target);
 	onProgress?.(0, "assigning");
 	const { candidates, bound } = chooseAssignments(problem);
+	const ends = endGap(problem);
 	let best: Outcome | null = null as Outcome | null;
 	for (let k = 0; k < Math.min(TRIES, candidates.length); k++) {
 		const known: number = best?.clear ? lawDuration(best.law) : Infinity;
 		if (known <= Math.max(ENOUGH * bound, WORTH * candidates[k].together)) break;
 		onProgress?.(0.3 + (0.6 * k) / TRIES, "parting near pairs");
-		const found = partedOutcome(problem, candidates[k], bound);
+		const found = partedOutcome(problem, candidates[k], bound, problem.limits.spacing, ends);
 		if (found !== null) best = better(best, found);
 	}
 	const free = candidates.find(({ cap }) => cap === null);
 	if (free && !best?.clear) best = better(best, guaranteedOutcome(problem, free));
-	const { candidate, paths, law, method } = best as unknown as Outcome;
+	best = roomier(problem, best as unknown as Outcome, bound, ends);
+	const { candidate, paths, law, method } = best;
 	const { assignment, cap } = candidate;
 	onProgress?.(1, "planned");
 	return {
@@ -95,26 +100,50 @@ function planForced(problem: LegProblem, target: Int32Array): Plan {
 	};
 }
 
-/** Straight if that keeps spacing; else bent until it does; null where that doesn't come to an end. */
-function partedOutcome(problem: LegProblem, candidate: Candidate, bound: number): Outcome | null {
-	const { target } = candidate.assignment;
-	const { spacing, downwash } = problem.limits;
-	const count = target.length;
-	const ends = [problem.from, problem.to].map((points) => {
-		const still = straightPaths(points, points, Int32Array.from(target.keys()));
-		return smallestSeparation(still.coefficients, 1, count, downwash).distance;
+/** The smaller of the two formations' own gaps, m in the measure of spacing: no bend can give more than the ends have. */
+function endGap({ from, to, limits }: LegProblem): number {
+	const count = from.length / 3;
+	const own = Int32Array.from({ length: count }, (_, i) => i);
+	const gaps = [from, to].map((points) => {
+		const still = straightPaths(points, points, own);
+		return smallestSeparation(still.coefficients, 1, count, limits.downwash).distance;
 	});
-	// A formation may itself stand a rounding under the spacing: no bend can give more than the ends have.
-	const gap = Math.min(spacing, ...ends.map((end) => end - GAP_TOLERANCE / 20));
-	const parted = partPairs(problem, target, {
+	return Math.min(...gaps);
+}
+
+/**
+ * Straight if that keeps so much gap; else bent until it does; null where that doesn't come to an end.
+ * @param wanted m in the measure of spacing; @param ends the formations' own gap, which may lie a rounding under it
+ */
+function partedOutcome(
+	problem: LegProblem,
+	candidate: Candidate,
+	bound: number,
+	wanted: number,
+	ends: number,
+): Outcome | null {
+	const gap = Math.min(wanted, ends - GAP_TOLERANCE / 20);
+	const parted = partPairs(problem, candidate.assignment.target, {
 		gap,
-		least: Math.max(spacing - 0.95 * GAP_TOLERANCE, gap - 0.3 * GAP_TOLERANCE),
+		least: Math.max(wanted - 0.95 * GAP_TOLERANCE, gap - 0.3 * GAP_TOLERANCE),
 		bound,
 		enough: ENOUGH * bound,
 		latest: LATEST * Math.max(bound, candidate.together),
 		looks: LOOKS,
 	});
 	return parted && outcome(problem, candidate, parted.paths, parted.paths.degree === 1 ? "straight" : "bent");
+}
+
+/** The same flights with more gap where the formations leave room for it and it costs next to no time. */
+function roomier(problem: LegProblem, best: Outcome, bound: number, ends: number): Outcome {
+	const { spacing, downwash } = problem.limits;
+	const wanted = Math.min((1 + TIGHT_SHARE) * spacing, ends - GAP_TOLERANCE);
+	if (!best.clear || wanted < LEAST_ROOM * spacing) return best;
+	const count = problem.from.length / 3;
+	const { coefficients, degree } = best.paths;
+	if (smallestSeparation(coefficients, degree, count, downwash).distance >= wanted - GAP_TOLERANCE) return best;
+	const found = partedOutcome(problem, best.candidate, bound, wanted, ends);
+	return found?.clear && lawDuration(found.law) <= ROOM_COSTS * lawDuration(best.law) ? found : best;
 }
 
 /** Paths that part every pair whatever the formations; they hold for an uncapped optimal assignment alone. */

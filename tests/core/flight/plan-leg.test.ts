@@ -1,5 +1,6 @@
 import fc from "fast-check";
 import { describe, expect, it } from "vitest";
+import { assign } from "../../../src/core/flight/assign/assign.ts";
 import {
 	type LegProblem,
 	lawAt,
@@ -9,6 +10,8 @@ import {
 	provePlan,
 	withKey,
 } from "../../../src/core/flight/index.ts";
+import { scaledMillimetres } from "../../../src/core/flight/measure.ts";
+import { straightPaths } from "../../../src/core/flight/paths/polynomial-paths.ts";
 import { smallestSeparation } from "../../../src/core/flight/proof/separation.ts";
 import { createRandom, smallestGap } from "../../../src/core/maths/index.ts";
 
@@ -140,11 +143,21 @@ describe("a planned transition", () => {
 
 	it("has no conflict on straight lines where both formations are spaced √2 apart (Turpin, Michael & Kumar 2014)", () => {
 		for (let seed = 1; seed <= 8; seed++) {
-			const plan = planLeg(
-				problemOf(scatter(80, seed, 1.5 * Math.SQRT2 + 0.003), scatter(80, seed + 20, 1.5 * Math.SQRT2 + 0.003)),
-			);
-			if (plan.certificate.cap === null) expect(plan.method).toBe("straight");
+			const [from, to] = [seed, seed + 20].map((one) => scatter(80, one, 1.5 * Math.SQRT2 + 0.003));
+			const solved = assign(scaledMillimetres(from, LIMITS.downwash), scaledMillimetres(to, LIMITS.downwash));
+			const { coefficients } = straightPaths(from, to, solved!.target);
+			expect(smallestSeparation(coefficients, 1, 80, LIMITS.downwash).distance).toBeGreaterThanOrEqual(1.498);
 		}
+	});
+
+	it("keeps more than the spacing where the formations leave room and it costs no time", () => {
+		const far = (seed: number, away: number) =>
+			scatter(60, seed, 1.8).map((value, k) => (k % 3 === 1 ? value + away : value));
+		const problem = problemOf(far(3, 0), far(7, 40));
+		const plan = planLeg(problem);
+		const proof = provePlan(plan, problem, plan.shortest);
+		expect(proof.gap!.distance).toBeGreaterThan(1.1 * 1.5 - 0.003);
+		expect(plan.shortest).toBeLessThan(1.1 * plan.straightLineBound);
 	});
 
 	it("stands still where nothing moves, and flies alone as the closed form says", () => {
