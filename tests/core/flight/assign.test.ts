@@ -66,7 +66,7 @@ describe("who goes where", () => {
 		}
 	});
 
-	it("does not care how slots are numbered, shifted or scaled", () => {
+	it("does not care how slots are numbered, shifted, turned or scaled", () => {
 		fc.assert(
 			fc.property(
 				fc.integer({ min: 2, max: 40 }),
@@ -80,6 +80,9 @@ describe("who goes where", () => {
 					expect(assign(turned, to)!.cost).toBe(plain);
 					const larger = (set: Float64Array) => set.map((value) => value * scale + 1234);
 					expect(assign(larger(from), larger(to))!.cost).toBe(plain * scale * scale);
+					// A quarter turn about the vertical keeps whole millimetres.
+					const yawed = (set: Float64Array) => set.map((_, k) => [-set[k + 1], set[k - 1], set[k]][k % 3]);
+					expect(assign(yawed(from), yawed(to))!.cost).toBe(plain);
 				},
 			),
 			{ numRuns: 40 },
