@@ -1,8 +1,9 @@
 import { useCallback, useEffect, useRef, useState } from "react";
 import { useStore } from "zustand";
-import { type StudioState, toOld } from "../app/index.ts";
+import type { StudioState } from "../app/index.ts";
 import { dronePositions } from "../core/flight/index.ts";
 import { lightAt } from "../core/light/index.ts";
+import { toOld } from "../core/retime/index.ts";
 import type { Box } from "../core/show/index.ts";
 import { createNightView, type NightView, type NightViewpoint } from "../night/index.ts";
 import { desk } from "./desk.ts";

@@ -1,4 +1,4 @@
-import { useEffect, useMemo, useRef, useState } from "react";
+import { type RefObject, useEffect, useMemo, useRef, useState } from "react";
 import { useStore } from "zustand";
 import { listActions } from "./actions.ts";
 import { CommandFinder } from "./CommandFinder.tsx";
@@ -60,31 +60,17 @@ export function Spread() {
 				if (dropped) void studio.commands.openFile(dropped);
 			}}
 		>
-			<input
-				ref={file}
-				type="file"
-				className="unseen"
-				tabIndex={-1}
-				aria-label="Open a soundtrack or a show"
-				accept="audio/*,.wav,.mp3,.flac,.ogg,.opus,.m4a,.aac,.json,.starstave"
-				onChange={(event) => {
-					const chosen = event.target.files?.[0];
-					if (chosen) void studio.commands.openFile(chosen);
-					event.target.value = "";
-				}}
+			<HiddenFile
+				host={file}
+				label="Open a soundtrack or a show"
+				accept={`${SOUNDS},.json,.starstave`}
+				open={(chosen) => void studio.commands.openFile(chosen)}
 			/>
-			<input
-				ref={editFile}
-				type="file"
-				className="unseen"
-				tabIndex={-1}
-				aria-label="Open a new edit of the music"
-				accept="audio/*,.wav,.mp3,.flac,.ogg,.opus,.m4a,.aac"
-				onChange={(event) => {
-					const chosen = event.target.files?.[0];
-					if (chosen) void studio.commands.openNewEdit(chosen);
-					event.target.value = "";
-				}}
+			<HiddenFile
+				host={editFile}
+				label="Open a new edit of the music"
+				accept={SOUNDS}
+				open={(chosen) => void studio.commands.openNewEdit(chosen)}
 			/>
 			<section className="left" aria-label="Music">
 				<Masthead actions={actions} />
@@ -109,5 +95,31 @@ export function Spread() {
 			<KeysList actions={actions} />
 			{dropping && <div className="drop-veil">Let go to open the soundtrack or show</div>}
 		</main>
+	);
+}
+
+const SOUNDS = "audio/*,.wav,.mp3,.flac,.ogg,.opus,.m4a,.aac";
+
+/** The browser's file dialog behind an action. */
+function HiddenFile(props: {
+	host: RefObject<HTMLInputElement | null>;
+	label: string;
+	accept: string;
+	open: (file: File) => void;
+}) {
+	return (
+		<input
+			ref={props.host}
+			type="file"
+			className="unseen"
+			tabIndex={-1}
+			aria-label={props.label}
+			accept={props.accept}
+			onChange={(event) => {
+				const chosen = event.target.files?.[0];
+				if (chosen) props.open(chosen);
+				event.target.value = "";
+			}}
+		/>
 	);
 }

@@ -1,11 +1,9 @@
-import { createRequire } from "node:module";
 import type { Page } from "playwright-core";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import { writeShow } from "../../src/core/show/index.ts";
 import { smallShow } from "../core/flight/remedy/small-show.ts";
+import { axePath, findBarriers } from "./barriers.ts";
 import { openStage, type Stage } from "./browser.ts";
-
-const axePath = createRequire(import.meta.url).resolve("axe-core/axe.min.js");
 
 const ring = (id: string, x: number, radius = 8) => ({
 	id,
@@ -33,17 +31,6 @@ async function openShow(page: Page): Promise<void> {
 
 /** All remedies are there. */
 const found = (page: Page) => page.getByText("Each has been planned and proven.").waitFor({ timeout: 60_000 });
-
-async function findBarriers(page: Page): Promise<string[]> {
-	return page.evaluate(async () => {
-		interface AxeAnswer {
-			violations: { id: string; nodes: { target: string[] }[] }[];
-		}
-		const { axe } = window as unknown as { axe: { run(root: Document, options: object): Promise<AxeAnswer> } };
-		const answer = await axe.run(document, { runOnly: ["wcag2a", "wcag2aa", "wcag21a", "wcag21aa", "wcag22aa"] });
-		return answer.violations.flatMap((one) => one.nodes.map((node) => `${one.id}: ${node.target.join(" ")}`));
-	});
-}
 
 describe("verdicts and remedies", () => {
 	let stage: Stage;

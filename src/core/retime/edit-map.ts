@@ -65,3 +65,21 @@ export function newTimeIn(stretch: Stretch, old: number): number {
 export function oldTimeIn(stretch: Stretch, time: number): number {
 	return stretch.old[0] + (time - stretch.new[0]) * (stretch.rate ?? 1);
 }
+
+/** The new second where what is heard at an old one is; where it was cut, the place where it would have been. */
+export function toNew(map: EditMap, old: number): number {
+	const carried = map.stretches.filter(isCarried);
+	const at = carried.find((one) => old >= one.old[0] && old < one.old[1]);
+	if (at !== undefined) return newTimeIn(at, old);
+	const before = carried.filter((one) => one.old[1] <= old).sort((a, b) => b.old[1] - a.old[1])[0];
+	return before?.new[1] ?? 0;
+}
+
+/** Likewise the old second of a new one. */
+export function toOld(map: EditMap, time: number): number {
+	const carried = map.stretches.filter(isCarried);
+	const at = carried.find((one) => time >= one.new[0] && time < one.new[1]);
+	if (at !== undefined) return oldTimeIn(at, time);
+	const before = carried.filter((one) => one.new[1] <= time).at(-1);
+	return before?.old[1] ?? 0;
+}

@@ -9,6 +9,8 @@ export {
 	oldTimeIn,
 	type Stretch,
 	type StretchKind,
+	toNew,
+	toOld,
 } from "./edit-map.ts";
 export { type MapOptions, mapEdit } from "./map-edit.ts";
 export { type Place, placesOf } from "./places.ts";

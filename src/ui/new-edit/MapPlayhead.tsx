@@ -1,5 +1,6 @@
 import { useCallback, useRef } from "react";
-import { type NewEdit, toNew, toOld } from "../../app/index.ts";
+import type { NewEdit } from "../../app/index.ts";
+import { toNew, toOld } from "../../core/retime/index.ts";
 import { useFrame } from "../use-frame.ts";
 import type { Scale } from "./scale.ts";
 

@@ -10,18 +10,7 @@ import { peaksOfFlight } from "../../../src/core/flight/proof/peaks.ts";
 import { createRandom } from "../../../src/core/maths/index.ts";
 import type { Box } from "../../../src/core/show/index.ts";
 import { formationPairs } from "../../problems/formation-pairs.ts";
-
-const LIMITS = {
-	horizontal: 6,
-	climb: 3,
-	descent: 2,
-	acceleration: 3,
-	jerk: 10,
-	spacing: 1.5,
-	downwash: 2,
-	endurance: 900,
-	reserve: 0.25,
-};
+import { LIMITS } from "./usual-limits.ts";
 
 function problemOf(from: Float64Array, to: Float64Array, blocked: readonly Box[] = []): LegProblem {
 	return withKey({

@@ -14,18 +14,7 @@ import { scaledMillimetres } from "../../../src/core/flight/measure.ts";
 import { straightPaths } from "../../../src/core/flight/paths/polynomial-paths.ts";
 import { smallestSeparation } from "../../../src/core/flight/proof/separation.ts";
 import { createRandom, smallestGap } from "../../../src/core/maths/index.ts";
-
-const LIMITS = {
-	horizontal: 6,
-	climb: 3,
-	descent: 2,
-	acceleration: 3,
-	jerk: 10,
-	spacing: 1.5,
-	downwash: 2,
-	endurance: 900,
-	reserve: 0.25,
-};
+import { LIMITS } from "./usual-limits.ts";
 
 /** Points at least `apart` from each other in the measure of spacing, on whole millimetres, in random order. */
 function scatter(count: number, seed: number, apart: number): Float64Array {
