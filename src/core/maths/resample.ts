@@ -23,6 +23,111 @@ function bessel0(x: number): number {
 
 const greatestDivisor = (a: number, b: number): number => (b === 0 ? a : greatestDivisor(b, a % b));
 
+/** Input samples that are worked on at a time. */
+const PIECE = 32_768;
+
+/** Changes the rate of a signal that comes piece by piece: the same samples whatever the pieces. */
+export interface Resampler {
+	/** Takes the next samples. @returns the outputs that they complete */
+	push(samples: Float32Array): Float32Array;
+	/** @returns the outputs that reach past the end, beyond which the signal is zero. Nothing may be pushed afterwards. */
+	finish(): Float32Array;
+}
+
+/**
+ * @param from Hz, whole
+ * @param to Hz, whole
+ * @returns a resampler that gives ceil(length · to / from) samples in all; a copy where the rates are the same
+ */
+export function createResampler(from: number, to: number): Resampler {
+	if (from === to) return { push: (samples) => samples.slice(), finish: () => new Float32Array(0) };
+	const divisor = greatestDivisor(Math.round(from), Math.round(to));
+	const step = from / to; // input samples an output sample
+	const phases = Math.min(to / divisor, MOST_PHASES);
+	const reach = Math.ceil(CROSSINGS * Math.max(1, step));
+	const table = kernelTable(phases, reach, Math.min(1, 1 / step));
+	const decimate = phases === 1 ? createDecimator(step, table) : null;
+	// Input samples base … base + count lie in `held`; the signal begins after `reach` zeros.
+	let held = new Float32Array(reach + PIECE + Math.ceil(2 * (reach + step)) + 4);
+	let base = -reach;
+	let count = reach;
+	let done = 0; // outputs so far
+
+	/** Outputs `done` … `last` into `out`; what no further output needs is let go. */
+	const produce = (last: number, out: Float32Array, at: number): void => {
+		if (decimate) decimate(held.subarray(0, count), done * step - reach + 1 - base, out, at, at + last - done);
+		else interpolate(table, { phases, step, taps: 2 * reach }, held, base, done, last, out, at);
+		done = last;
+		const keep = Math.max(base, Math.min(base + count, Math.floor(done * step) - reach));
+		held.copyWithin(0, keep - base, count);
+		count -= keep - base;
+		base = keep;
+	};
+	const take = (samples: Float32Array): void => {
+		if (count + samples.length > held.length) {
+			const wider = new Float32Array(count + samples.length);
+			wider.set(held.subarray(0, count));
+			held = wider;
+		}
+		held.set(samples, count);
+		count += samples.length;
+	};
+	/** Outputs of which every input has come: an output reads up to `reach` samples past its own place. */
+	const ready = (): number => Math.max(done, Math.floor((base + count - reach - 2) / step));
+
+	return {
+		push: (samples) => {
+			const came = base + count + samples.length;
+			const out = new Float32Array(Math.max(done, Math.floor((came - reach - 2) / step)) - done);
+			const first = done;
+			for (let at = 0; at < samples.length; at += PIECE) {
+				take(samples.subarray(at, at + PIECE));
+				produce(ready(), out, done - first);
+			}
+			return out;
+		},
+		finish: () => {
+			const total = Math.ceil(((base + count) * to) / from);
+			const out = new Float32Array(Math.max(0, total - done));
+			take(new Float32Array(2 * reach + Math.ceil(step) + 4));
+			produce(Math.max(done, total), out, 0);
+			return out;
+		},
+	};
+}
+
+/** Outputs first … last at places between the input's samples, each by the row of weights for its phase. */
+function interpolate(
+	table: Float32Array,
+	{ phases, step, taps }: { phases: number; step: number; taps: number },
+	held: Float32Array,
+	base: number,
+	first: number,
+	last: number,
+	out: Float32Array,
+	to: number,
+): void {
+	for (let i = first; i < last; i++) {
+		const at = i * step;
+		let whole = Math.floor(at + 1e-9);
+		let phase = Math.round((at - whole) * phases);
+		if (phase === phases) {
+			phase = 0;
+			whole++;
+		}
+		// Tap j weighs input sample whole − taps / 2 + 1 + j.
+		const from = whole - taps / 2 + 1 - base;
+		const row = phase * taps;
+		let a = 0;
+		let b = 0;
+		for (let j = 0; j < taps; j += 2) {
+			a += held[from + j] * table[row + j];
+			b += held[from + j + 1] * table[row + j + 1];
+		}
+		out[to + i - first] = a + b;
+	}
+}
+
 /**
  * The signal at another rate.
  * @param signal samples at `from` Hz
@@ -31,60 +136,15 @@ const greatestDivisor = (a: number, b: number): number => (b === 0 ? a : greates
  * @returns ceil(length · to / from) samples; a copy where the rates are the same
  */
 export function resample(signal: Float32Array, from: number, to: number): Float32Array {
-	return resampleMix([signal], from, to);
-}
-
-/**
- * The mean of several channels at another rate, without a mixed copy at the old rate: half an hour of stereo takes the
- * room of its result alone.
- */
-export function resampleMix(channels: readonly Float32Array[], from: number, to: number): Float32Array {
-	const length = channels[0]?.length ?? 0;
-	const out = new Float32Array(Math.ceil((length * to) / from));
-	const mixed = createMixer(channels);
-	if (from === to) {
-		mixed(0, out);
-		return out;
+	const resampler = createResampler(from, to);
+	const out = new Float32Array(Math.ceil((signal.length * to) / from));
+	let at = 0;
+	for (let start = 0; start < signal.length; start += PIECE) {
+		const part = resampler.push(signal.subarray(start, start + PIECE));
+		out.set(part, at);
+		at += part.length;
 	}
-	const divisor = greatestDivisor(Math.round(from), Math.round(to));
-	const step = from / to; // input samples an output sample
-	const exactPhases = to / divisor;
-	const phases = Math.min(exactPhases, MOST_PHASES);
-	const reach = Math.ceil(CROSSINGS * Math.max(1, step));
-	const taps = 2 * reach;
-	const table = kernelTable(phases, reach, Math.min(1, 1 / step));
-	const decimate = createDecimator(phases === 1 ? step : 1, table);
-	// The input is mixed block by block: each block's outputs need `reach` input samples on either side.
-	const block = 16_384;
-	const input = new Float32Array(Math.ceil(block * step) + taps + 4);
-	for (let first = 0; first < out.length; first += block) {
-		const last = Math.min(out.length, first + block);
-		const base = Math.floor(first * step) - reach;
-		mixed(base, input);
-		if (phases === 1) {
-			decimate(input, first * step - reach + 1 - base, out, first, last);
-			continue;
-		}
-		for (let i = first; i < last; i++) {
-			const at = i * step;
-			let whole = Math.floor(at + 1e-9);
-			let phase = Math.round((at - whole) * phases);
-			if (phase === phases) {
-				phase = 0;
-				whole++;
-			}
-			// Tap j weighs input sample whole − reach + 1 + j.
-			const from0 = whole - reach + 1 - base;
-			const row = phase * taps;
-			let a = 0;
-			let b = 0;
-			for (let j = 0; j < taps; j += 2) {
-				a += input[from0 + j] * table[row + j];
-				b += input[from0 + j + 1] * table[row + j + 1];
-			}
-			out[i] = a + b;
-		}
-	}
+	out.set(resampler.finish(), at);
 	return out;
 }
 
@@ -171,17 +231,4 @@ function kernelTable(phases: number, reach: number, cutoff: number): Float32Arra
 		for (let j = 0; j < taps; j++) table[p * taps + j] = row[j] / sum;
 	}
 	return table;
-}
-
-/** Fills a buffer with the channels' mean from input sample `base` on; zero outside the signal's ends. */
-function createMixer(channels: readonly Float32Array[]): (base: number, into: Float32Array) => void {
-	const share = 1 / Math.max(1, channels.length);
-	return (base, into) => {
-		into.fill(0);
-		for (const channel of channels) {
-			const from = Math.max(0, -base);
-			const to = Math.min(into.length, channel.length - base);
-			for (let i = from; i < to; i++) into[i] += channel[base + i] * share;
-		}
-	};
 }

@@ -89,3 +89,59 @@ export function createFrameSpectrum(
 		}
 	};
 }
+
+/** Frames of a signal that comes piece by piece. */
+export interface FrameStream {
+	/** Takes the next samples, and hands on the frames that they complete. */
+	push(samples: Float32Array): void;
+	/** Hands on the frames that reach past the end, up to `frames` in all. Nothing may be pushed afterwards. */
+	finish(frames: number): void;
+}
+
+/**
+ * Magnitudes of Hann-windowed frames of a signal that comes piece by piece, as `createFrameSpectrum` measures them.
+ * @param size samples of a frame, a power of two
+ * @param centreOf sample on which frame i is centred; rises with i
+ * @param take called with each frame in turn; `magnitudes` (size/2 + 1 values) is used again for the next
+ */
+export function createFrameStream(
+	size: number,
+	centreOf: (frame: number) => number,
+	take: (magnitudes: Float32Array, frame: number) => void,
+): FrameStream {
+	const measure = createFrameSpectrum(size);
+	const magnitudes = new Float32Array(size / 2 + 1);
+	const half = size / 2;
+	const piece = 8 * size;
+	// Samples base … base + count lie in `held`.
+	const held = new Float32Array(piece + 2 * size);
+	let base = 0;
+	let count = 0;
+	let frame = 0;
+	const hand = (): void => {
+		measure(held.subarray(0, count), centreOf(frame) - base, magnitudes);
+		take(magnitudes, frame);
+		frame++;
+	};
+	/** Lets go of what no further frame needs. */
+	const slide = (): void => {
+		const keep = Math.max(base, Math.min(base + count, centreOf(frame) - half));
+		held.copyWithin(0, keep - base, count);
+		count -= keep - base;
+		base = keep;
+	};
+	return {
+		push: (samples) => {
+			for (let at = 0; at < samples.length; at += piece) {
+				const part = samples.subarray(at, at + piece);
+				held.set(part, count);
+				count += part.length;
+				while (centreOf(frame) + half <= base + count) hand();
+				slide();
+			}
+		},
+		finish: (frames) => {
+			while (frame < frames) hand();
+		},
+	};
+}

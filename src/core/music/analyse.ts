@@ -1,21 +1,19 @@
 /** Samples → everything the tool hears in a soundtrack. */
-import { resampleMix } from "../maths/index.ts";
 import { StarstaveError } from "../units/index.ts";
 import type { Analysis, MusicSection, Sound } from "./analysis.ts";
-import { HEARING_RATE, hearBands } from "./bands.ts";
-import { drawCurves, drawPeaks } from "./curves.ts";
+import { drawCurves } from "./curves.ts";
 import { type BarLikeness, compareBars } from "./describe-bars.ts";
 import { findBoundaries } from "./find-sections.ts";
 import { followBeats } from "./follow-beats.ts";
-import { hearHarmony } from "./harmony.ts";
-import { type Loudness, measureLoudness } from "./loudness.ts";
+import { createListener, type Heard, type Listener } from "./listen.ts";
+import type { Loudness } from "./loudness.ts";
 import { findMoments } from "./moments.ts";
 import { nameSections } from "./name-sections.ts";
-import { levelOut, networkActivation } from "./network/index.ts";
+import { networkActivation } from "./network/index.ts";
 import { type PlacedBeats, placeBeats } from "./place-beats.ts";
 
 /** Rises whenever the same samples would give another answer. */
-export const ANALYSIS_VERSION = 2;
+export const ANALYSIS_VERSION = 3;
 
 /** How fine sections are, from coarse to fine: all are kept, so that turning detail up asks for no new analysis. */
 export const SECTION_DETAILS = [0, 0.25, 0.5, 0.75, 1] as const;
@@ -33,6 +31,12 @@ export interface AnalyseOptions {
 	readonly detail?: number;
 }
 
+const NOTHING = "The soundtrack holds no samples, so there is nothing to analyse.";
+/** Samples of a channel that are listened to at a time. */
+const PIECE = 1 << 17;
+/** Share of the whole time that the first pass over the sound takes. */
+const LISTENING = 0.4;
+
 /**
  * Listens to a whole soundtrack: beats, bars, sections, loudness, curves, moments.
  * The same samples give the same answer anywhere.
@@ -41,28 +45,64 @@ export interface AnalyseOptions {
 export function analyse(sound: Sound, options: AnalyseOptions = {}): Analysis {
 	const { channels, sampleRate } = sound;
 	const length = channels[0]?.length ?? 0;
-	if (length === 0 || !(sampleRate > 0)) {
-		throw new StarstaveError("soundtrack", "The soundtrack holds no samples, so there is nothing to analyse.");
-	}
+	if (length === 0 || !(sampleRate > 0)) throw new StarstaveError("soundtrack", NOTHING);
+	const listen = (alone: number | null): Heard => {
+		const listener = createListener(sampleRate, channels.length, alone);
+		for (let at = 0; at < length; at += PIECE) {
+			options.onProgress?.((LISTENING * at) / length, "listening");
+			listener.push(channels.map((channel) => channel.subarray(at, at + PIECE)));
+		}
+		return listener.finish();
+	};
+	const heard = listen(null);
+	return conclude(heard.alone === null ? heard : listen(heard.alone), options);
+}
+
+/** A piece of a soundtrack that comes piece by piece. */
+export interface SoundPiece extends Sound {
+	/** How much of the whole has come with it, 0..1. */
+	readonly share: number;
+}
+
+/**
+ * The same of a soundtrack that comes piece by piece and is never held as a whole: half an hour of stereo in the room of
+ * its bands.
+ * @param open begins the soundtrack anew; asked for a second time where the channels cancel in their mean
+ * @throws StarstaveError where there are no samples
+ */
+export async function analysePieces(
+	open: () => AsyncIterable<SoundPiece>,
+	options: AnalyseOptions = {},
+): Promise<Analysis> {
+	const listen = async (alone: number | null): Promise<Heard> => {
+		let listener: Listener | null = null;
+		for await (const { channels, sampleRate, share } of open()) {
+			listener ??= createListener(sampleRate, channels.length, alone);
+			listener.push(channels);
+			options.onProgress?.(LISTENING * share, "listening");
+		}
+		if (listener === null) throw new StarstaveError("soundtrack", NOTHING);
+		return listener.finish();
+	};
+	const heard = await listen(null);
+	return conclude(heard.alone === null ? heard : await listen(heard.alone), options);
+}
+
+/** From what was heard to what it means. */
+function conclude(heard: Heard, options: AnalyseOptions): Analysis {
+	const { sampleRate, loudness, bands, harmony } = heard;
 	const tell = options.onProgress ?? (() => {});
 	const within = (from: number, to: number, stage: string) => (share: number) =>
 		tell(from + (to - from) * share, stage);
-
-	tell(0, "loudness");
-	const loudness = measureLoudness(channels, sampleRate);
-	const peaks = drawPeaks(channels, sampleRate);
-	tell(0.1, "listening");
-	const mono = levelOut(hearMono(channels, sampleRate));
-	const bands = hearBands(mono, within(0.2, 0.3, "listening"));
-	const harmony = hearHarmony(mono);
-	const activation = networkActivation(bands, harmony, within(0.4, 0.85, "beats"));
+	const duration = heard.length / sampleRate;
+	const activation = networkActivation(bands, harmony, within(LISTENING, 0.85, "beats"));
 	const walk = followBeats(activation, harmony, within(0.85, 0.95, "beats"));
 	const notes: string[] = [];
 	const sounding = findSound(loudness);
 	const placed = judge(placeBeats(activation, walk, soundingNear(sounding, loudness.rate)), loudness, sounding, notes);
 	tell(0.95, "sections");
 	const curves = drawCurves(bands, loudness);
-	const edges = placed.bars.length > 0 ? barEdges(placed, length / sampleRate) : new Float64Array(0);
+	const edges = placed.bars.length > 0 ? barEdges(placed, duration) : new Float64Array(0);
 	const likeness = compareBars(bands, harmony, edges);
 	const sections = divide(placed, likeness, edges, options.detail ?? 0.5);
 	const sectionLevels = SECTION_DETAILS.map((detail) => divide(placed, likeness, edges, detail));
@@ -71,9 +111,9 @@ export function analyse(sound: Sound, options: AnalyseOptions = {}): Analysis {
 	tell(1, "done");
 	return {
 		version: ANALYSIS_VERSION,
-		duration: length / sampleRate,
+		duration,
 		sampleRate,
-		channels: channels.length,
+		channels: heard.channels,
 		tempo: { bpm: tempoOf(placed.beats) },
 		beats: placed.beats,
 		beatConfidence: placed.confidence,
@@ -84,24 +124,13 @@ export function analyse(sound: Sound, options: AnalyseOptions = {}): Analysis {
 		confidence: placed.overall,
 		loudness,
 		curves,
-		peaks,
+		peaks: heard.peaks,
 		notes,
 	};
 }
 
 const meanOf = (values: Float32Array): number =>
 	values.length === 0 ? 0 : values.reduce((sum, x) => sum + x, 0) / values.length;
-
-/** Channels that cancel in their mean (opposite phase) are heard by the louder one. */
-function hearMono(channels: readonly Float32Array[], sampleRate: number): Float32Array {
-	const mono = resampleMix(channels, sampleRate, HEARING_RATE);
-	if (channels.length < 2) return mono;
-	const energy = (signal: Float32Array): number => signal.reduce((sum, x) => sum + x * x, 0) / signal.length;
-	const energies = channels.map(energy);
-	const loudest = energies.indexOf(Math.max(...energies));
-	if (energy(mono) >= (0.02 * energies[loudest]) / channels.length) return mono;
-	return resampleMix([channels[loudest]], sampleRate, HEARING_RATE);
-}
 
 /** Which tenths of a second hold sound. A momentary window looks back 0.4 s, so the newest of them tells first. */
 function findSound(loudness: Loudness): Uint8Array {

@@ -2,7 +2,7 @@
  * The sound as the first form of the analysis hears it: 48 mel bands, fifty times a second.
  * Frame i is centred on sample 441 · i of the 22.05 kHz mono signal.
  */
-import { createFrameSpectrum } from "../maths/index.ts";
+import { createFrameStream, createGrowing } from "../maths/index.ts";
 
 /** Hz. Everything in this folder but loudness hears the music at this rate. */
 export const HEARING_RATE = 22_050;
@@ -26,15 +26,21 @@ export interface Bands {
 const toMel = (hz: number): number => 2595 * Math.log10(1 + hz / 700);
 const fromMel = (mel: number): number => 700 * (10 ** (mel / 2595) - 1);
 
-/** @param mono samples at HEARING_RATE */
-export function hearBands(mono: Float32Array, onProgress?: (share: number) => void): Bands {
-	const frames = mono.length === 0 ? 0 : Math.floor(mono.length / HOP) + 1;
+/** Hears the mel bands of a signal that comes piece by piece. */
+export interface BandEar {
+	/** @param mono the next samples, at HEARING_RATE */
+	push(mono: Float32Array): void;
+	/**
+	 * @param gain what the signal is to be multiplied by, known only now that it has all been heard
+	 * @returns the bands of the whole. Nothing may be pushed afterwards.
+	 */
+	finish(gain: number): Bands;
+}
+
+export function createBandEar(): BandEar {
 	const edges = Array.from({ length: BAND_COUNT + 2 }, (_, i) =>
 		fromMel(toMel(LOWEST) + ((toMel(HIGHEST) - toMel(LOWEST)) * i) / (BAND_COUNT + 1)),
 	);
-	const values = new Float32Array(frames * BAND_COUNT);
-	const magnitudes = new Float32Array(WINDOW / 2 + 1);
-	const measure = createFrameSpectrum(WINDOW);
 	// Triangles of height 1 as runs of weights over neighbouring bins.
 	const bin = HEARING_RATE / WINDOW;
 	const triangles = Array.from({ length: BAND_COUNT }, (_, b) => {
@@ -49,15 +55,32 @@ export function hearBands(mono: Float32Array, onProgress?: (share: number) => vo
 		});
 		return { first, weights };
 	});
-	for (let i = 0; i < frames; i++) {
-		measure(mono, i * HOP, magnitudes);
-		for (let b = 0; b < BAND_COUNT; b++) {
-			const { first, weights } = triangles[b];
-			let sum = 0;
-			for (let k = 0; k < weights.length; k++) sum += weights[k] * magnitudes[first + k];
-			values[i * BAND_COUNT + b] = Math.log10(1 + 1000 * sum);
-		}
-		if (onProgress && i % 1000 === 0) onProgress(i / frames);
-	}
-	return { frames, values, centres: Float64Array.from(edges.slice(1, -1)) };
+	const levels = createGrowing();
+	let samples = 0;
+	const frames = createFrameStream(
+		WINDOW,
+		(i) => i * HOP,
+		(magnitudes) => {
+			const { array, at } = levels.extend(BAND_COUNT);
+			for (let b = 0; b < BAND_COUNT; b++) {
+				const { first, weights } = triangles[b];
+				let sum = 0;
+				for (let k = 0; k < weights.length; k++) sum += weights[k] * magnitudes[first + k];
+				array[at + b] = sum;
+			}
+		},
+	);
+	return {
+		push: (mono) => {
+			samples += mono.length;
+			frames.push(mono);
+		},
+		finish: (gain) => {
+			const count = samples === 0 ? 0 : Math.floor(samples / HOP) + 1;
+			frames.finish(count);
+			const values = levels.values();
+			for (let k = 0; k < values.length; k++) values[k] = Math.log10(1 + 1000 * gain * values[k]);
+			return { frames: count, values, centres: Float64Array.from(edges.slice(1, -1)) };
+		},
+	};
 }

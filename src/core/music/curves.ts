@@ -1,4 +1,5 @@
 /** Curves of the music for intensity to follow, each 0..1 over the whole track, and the waveform for drawing. */
+import { createGrowing } from "../maths/index.ts";
 import type { Curve } from "../show/index.ts";
 import { BAND_COUNT, type Bands, FRAME_RATE } from "./bands.ts";
 import { spectralFlux } from "./flux.ts";
@@ -62,27 +63,49 @@ export function drawCurves(bands: Bands, loudness: Loudness): Curve[] {
 	];
 }
 
-/** Lowest and highest sample of each 1/200 s over all channels, interleaved. */
-export function drawPeaks(
-	channels: readonly Float32Array[],
-	sampleRate: number,
-): { values: Float32Array; rate: number } {
-	const length = channels[0]?.length ?? 0;
-	const count = Math.ceil((length / sampleRate) * PEAK_RATE);
-	const values = new Float32Array(2 * count);
-	for (const channel of channels) {
-		for (let i = 0; i < count; i++) {
-			const to = Math.min(length, Math.round(((i + 1) * sampleRate) / PEAK_RATE));
-			let low = values[2 * i];
-			let high = values[2 * i + 1];
-			for (let k = Math.round((i * sampleRate) / PEAK_RATE); k < to; k++) {
-				const x = channel[k];
-				if (x < low) low = x;
-				if (x > high) high = x;
+/** Draws the waveform of sound that comes piece by piece. */
+export interface PeakDrawer {
+	push(channels: readonly Float32Array[]): void;
+	/** Lowest and highest sample of each 1/rate s over all channels, interleaved. Nothing may be pushed afterwards. */
+	finish(): { values: Float32Array; rate: number };
+}
+
+export function createPeakDrawer(sampleRate: number): PeakDrawer {
+	const peaks = createGrowing();
+	const edgeOf = (pair: number): number => Math.round((pair * sampleRate) / PEAK_RATE);
+	let done = 0; // samples
+	let pairs = 0; // whole ones
+	let low = 0;
+	let high = 0;
+	const close = (): void => {
+		peaks.push(low);
+		peaks.push(high);
+		low = 0;
+		high = 0;
+	};
+	return {
+		push: (channels) => {
+			const length = channels[0]?.length ?? 0;
+			for (let at = 0; at < length; ) {
+				const edge = edgeOf(pairs + 1);
+				const to = Math.min(length, at + edge - done);
+				for (const channel of channels) {
+					for (let i = at; i < to; i++) {
+						const x = channel[i];
+						if (x < low) low = x;
+						if (x > high) high = x;
+					}
+				}
+				done += to - at;
+				at = to;
+				if (done < edge) break;
+				close();
+				pairs++;
 			}
-			values[2 * i] = low;
-			values[2 * i + 1] = high;
-		}
-	}
-	return { values, rate: PEAK_RATE };
+		},
+		finish: () => {
+			if (done > edgeOf(pairs)) close();
+			return { values: peaks.values(), rate: PEAK_RATE };
+		},
+	};
 }

@@ -3,7 +3,7 @@
  * The signal is brought down to 5.5 kHz first: nothing above the middle register is wanted, and a window of the same
  * length costs a quarter.
  */
-import { createFrameSpectrum, resample } from "../maths/index.ts";
+import { createFrameStream, createGrowing, createResampler } from "../maths/index.ts";
 import { HEARING_RATE } from "./bands.ts";
 
 export const CHROMA_SIZE = 24;
@@ -25,14 +25,19 @@ export interface Harmony {
 	readonly values: Float32Array;
 }
 
-/** @param mono samples at HEARING_RATE */
-export function hearHarmony(mono: Float32Array): Harmony {
-	const low = resample(mono, LOWERED, 1);
-	const frames = mono.length === 0 ? 0 : Math.floor((mono.length / HEARING_RATE) * CHROMA_RATE) + 1;
-	const values = new Float32Array(frames * CHROMA_SIZE);
-	const magnitudes = new Float32Array(WINDOW / 2 + 1);
-	const measure = createFrameSpectrum(WINDOW);
-	// Which bin feeds which row, with what weight: each row's weights sum to 1.
+/** Hears the chroma of a signal that comes piece by piece. */
+export interface HarmonyEar {
+	/** @param mono the next samples, at HEARING_RATE */
+	push(mono: Float32Array): void;
+	/**
+	 * @param gain what the signal is to be multiplied by, known only now that it has all been heard
+	 * @returns the chroma of the whole. Nothing may be pushed afterwards.
+	 */
+	finish(gain: number): Harmony;
+}
+
+/** Which bin feeds which row, with what weight: each row's weights sum to 1. */
+function weighBins(): { binOf: Int32Array; rowOf: Int32Array; weightOf: Float32Array } {
 	const bins: number[] = [];
 	const rows: number[] = [];
 	const weights: number[] = [];
@@ -50,17 +55,43 @@ export function hearHarmony(mono: Float32Array): Harmony {
 			}
 		}
 	});
-	const binOf = Int32Array.from(bins);
-	const rowOf = Int32Array.from(rows);
-	const weightOf = Float32Array.from(weights, (w, k) => w / totals[rows[k]]);
-	for (let i = 0; i < frames; i++) {
-		measure(low, Math.round((i * LOW_RATE) / CHROMA_RATE), magnitudes);
-		for (let k = 0; k < magnitudes.length; k++) magnitudes[k] = Math.sqrt(magnitudes[k]);
-		const at = i * CHROMA_SIZE;
-		for (let k = 0; k < binOf.length; k++) values[at + rowOf[k]] += weightOf[k] * magnitudes[binOf[k]];
-	}
-	for (let k = 0; k < values.length; k++) values[k] = Math.log1p(20 * values[k]);
-	return { frames, values };
+	return {
+		binOf: Int32Array.from(bins),
+		rowOf: Int32Array.from(rows),
+		weightOf: Float32Array.from(weights, (w, k) => w / totals[rows[k]]),
+	};
+}
+
+export function createHarmonyEar(): HarmonyEar {
+	const { binOf, rowOf, weightOf } = weighBins();
+	const lower = createResampler(LOWERED, 1);
+	const rows = createGrowing();
+	let samples = 0;
+	const frames = createFrameStream(
+		WINDOW,
+		(i) => Math.round((i * LOW_RATE) / CHROMA_RATE),
+		(magnitudes) => {
+			for (let k = 0; k < magnitudes.length; k++) magnitudes[k] = Math.sqrt(magnitudes[k]);
+			const { array, at } = rows.extend(CHROMA_SIZE);
+			for (let k = 0; k < binOf.length; k++) array[at + rowOf[k]] += weightOf[k] * magnitudes[binOf[k]];
+		},
+	);
+	return {
+		push: (mono) => {
+			samples += mono.length;
+			frames.push(lower.push(mono));
+		},
+		finish: (gain) => {
+			frames.push(lower.finish());
+			const count = samples === 0 ? 0 : Math.floor((samples / HEARING_RATE) * CHROMA_RATE) + 1;
+			frames.finish(count);
+			const values = rows.values();
+			// Of magnitudes the square roots were gathered, so of the gain too.
+			const root = Math.sqrt(gain);
+			for (let k = 0; k < values.length; k++) values[k] = Math.log1p(20 * root * values[k]);
+			return { frames: count, values };
+		},
+	};
 }
 
 /** Mean chroma of each stretch between times that rise: times.length − 1 rows of CHROMA_SIZE. */

@@ -1,4 +1,12 @@
-export { ANALYSIS_VERSION, type AnalyseOptions, analyse, DOUBTFUL, SECTION_DETAILS } from "./analyse.ts";
+export {
+	ANALYSIS_VERSION,
+	type AnalyseOptions,
+	analyse,
+	analysePieces,
+	DOUBTFUL,
+	SECTION_DETAILS,
+	type SoundPiece,
+} from "./analyse.ts";
 export type { ActivationCurves, Analysis, Moment, MusicSection, Sound } from "./analysis.ts";
 export { fitTaps, type TapFit } from "./fit-taps.ts";
 export { type Loudness, measureLoudness } from "./loudness.ts";

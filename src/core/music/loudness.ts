@@ -70,37 +70,74 @@ function channelWeights(count: number): readonly number[] {
 const toLufs = (power: number): number => (power > 1e-12 ? -0.691 + 10 * Math.log10(power) : SILENCE);
 const toPower = (lufs: number): number => 10 ** ((lufs + 0.691) / 10);
 
-/** K-weighted mean square of each 100 ms, channels weighted and summed. */
-function blockPowers(channels: readonly Float32Array[], sampleRate: number): Float64Array {
-	const length = channels[0]?.length ?? 0;
-	const blocks = Math.floor((length / sampleRate) * BLOCKS_A_SECOND + 1e-9);
-	const powers = new Float64Array(blocks);
-	const weights = channelWeights(channels.length);
+/** What a channel's two filters hold: transposed direct form II, two states a stage. */
+interface FilterState {
+	u1: number;
+	u2: number;
+	v1: number;
+	v2: number;
+	/** Sum of squares of the block that is under way. */
+	sum: number;
+}
+
+/** Measures loudness of sound that comes piece by piece. */
+export interface LoudnessMeter {
+	/** Takes the next samples of every channel. */
+	push(channels: readonly Float32Array[]): void;
+	/** Nothing may be pushed afterwards. */
+	finish(): Loudness;
+}
+
+/** @param channelCount in the order of WAV files */
+export function createLoudnessMeter(sampleRate: number, channelCount: number): LoudnessMeter {
+	const weights = channelWeights(channelCount);
 	const one = shelf(sampleRate);
 	const two = highPass(sampleRate);
-	channels.forEach((channel, c) => {
-		if (weights[c] === 0) return;
-		let [u1, u2, v1, v2] = [0, 0, 0, 0]; // transposed direct form II: two states a stage
-		for (let block = 0; block < blocks; block++) {
-			const from = Math.round((block * sampleRate) / BLOCKS_A_SECOND);
-			const to = Math.round(((block + 1) * sampleRate) / BLOCKS_A_SECOND);
-			let sum = 0;
-			for (let i = from; i < to; i++) {
-				const x = channel[i];
-				const y = one.b0 * x + u1;
-				u1 = one.b1 * x - one.a1 * y + u2;
-				u2 = one.b2 * x - one.a2 * y;
-				const z = y + v1;
-				v1 = -2 * y - two.a1 * z + v2;
-				v2 = y - two.a2 * z;
-				sum += z * z;
-			}
-			// a filter that has run into denormal numbers would be slow through minutes of silence
-			if (Math.abs(u1) + Math.abs(v1) < 1e-30) [u1, u2, v1, v2] = [0, 0, 0, 0];
-			powers[block] += (weights[c] * sum) / (to - from);
+	const states = Array.from({ length: channelCount }, (): FilterState => ({ u1: 0, u2: 0, v1: 0, v2: 0, sum: 0 }));
+	/** K-weighted mean square of each 100 ms, channels weighted and summed. */
+	const powers: number[] = [];
+	const edgeOf = (block: number): number => Math.round((block * sampleRate) / BLOCKS_A_SECOND);
+	let done = 0; // samples
+	let blocks = 0; // whole ones
+
+	/** Filters samples from … to of a channel and adds their squares to its block. */
+	const filter = (channel: Float32Array, from: number, to: number, state: FilterState): void => {
+		let { u1, u2, v1, v2, sum } = state;
+		for (let i = from; i < to; i++) {
+			const x = channel[i];
+			const y = one.b0 * x + u1;
+			u1 = one.b1 * x - one.a1 * y + u2;
+			u2 = one.b2 * x - one.a2 * y;
+			const z = y + v1;
+			v1 = -2 * y - two.a1 * z + v2;
+			v2 = y - two.a2 * z;
+			sum += z * z;
 		}
-	});
-	return powers;
+		// a filter that has run into denormal numbers would be slow through minutes of silence
+		if (Math.abs(u1) + Math.abs(v1) < 1e-30) u1 = u2 = v1 = v2 = 0;
+		Object.assign(state, { u1, u2, v1, v2, sum });
+	};
+	return {
+		push: (channels) => {
+			const length = channels[0]?.length ?? 0;
+			for (let at = 0; at < length; ) {
+				const edge = edgeOf(blocks + 1);
+				const to = Math.min(length, at + edge - done);
+				for (let c = 0; c < channelCount; c++) if (weights[c] !== 0) filter(channels[c], at, to, states[c]);
+				done += to - at;
+				at = to;
+				if (done < edge) break;
+				let power = 0;
+				for (let c = 0; c < channelCount; c++) {
+					power += (weights[c] * states[c].sum) / (edge - edgeOf(blocks));
+					states[c].sum = 0;
+				}
+				powers.push(power);
+				blocks++;
+			}
+		},
+		finish: () => loudnessOf(Float64Array.from(powers)),
+	};
 }
 
 /** Mean power of the last `span` blocks at each block; before there are as many, of those there are against the span. */
@@ -126,9 +163,7 @@ function integrate(momentary: Float64Array): number {
 	return first === SILENCE ? SILENCE : gated(Math.max(ABSOLUTE_GATE, first + RELATIVE_GATE));
 }
 
-/** @param channels samples at `sampleRate` Hz, −1..1, in the order of WAV files */
-export function measureLoudness(channels: readonly Float32Array[], sampleRate: number): Loudness {
-	const powers = blockPowers(channels, sampleRate);
+function loudnessOf(powers: Float64Array): Loudness {
 	const momentary = slidingMean(powers, MOMENTARY_BLOCKS);
 	const shortTerm = slidingMean(powers, SHORT_TERM_BLOCKS);
 	return {
@@ -137,4 +172,11 @@ export function measureLoudness(channels: readonly Float32Array[], sampleRate: n
 		shortTerm: Float32Array.from(shortTerm, toLufs),
 		rate: BLOCKS_A_SECOND,
 	};
+}
+
+/** @param channels samples at `sampleRate` Hz, −1..1, in the order of WAV files */
+export function measureLoudness(channels: readonly Float32Array[], sampleRate: number): Loudness {
+	const meter = createLoudnessMeter(sampleRate, channels.length);
+	meter.push(channels);
+	return meter.finish();
 }

@@ -6,22 +6,8 @@ import { BAND_COUNT, type Bands } from "../bands.ts";
 import { CHROMA_SIZE, type Harmony } from "../harmony.ts";
 import { CHROMA_ROWS, MEL_ROWS, ROWS } from "./weights.ts";
 
-/** Root mean square that a track is brought to before it is heard: loudness carries no information about beats. */
-export const HEARD_LEVEL = 0.1;
 /** What a band's distance from its mean is divided by. */
 const MEL_SPREAD = 0.4;
-
-/** The signal at HEARD_LEVEL, in place; silence stays silence. */
-export function levelOut(mono: Float32Array): Float32Array {
-	let sum = 0;
-	for (let i = 0; i < mono.length; i++) sum += mono[i] * mono[i];
-	const level = Math.sqrt(sum / Math.max(1, mono.length));
-	if (level > 1e-7) {
-		const gain = HEARD_LEVEL / level;
-		for (let i = 0; i < mono.length; i++) mono[i] *= gain;
-	}
-	return mono;
-}
 
 /**
  * The network's input: each row without its mean over the track; mel rows divided by MEL_SPREAD, each register of the

@@ -1,9 +1,8 @@
 import { readFileSync } from "node:fs";
 import { describe, expect, it } from "vitest";
-import { hearBands } from "../../../../src/core/music/bands.ts";
-import { hearHarmony } from "../../../../src/core/music/harmony.ts";
-import { levelOut, prepare } from "../../../../src/core/music/network/features.ts";
-import { beatActivation } from "../../../../src/core/music/network/index.ts";
+import { createListener, type Heard } from "../../../../src/core/music/listen.ts";
+import { prepare } from "../../../../src/core/music/network/features.ts";
+import { networkActivation } from "../../../../src/core/music/network/index.ts";
 import { infer } from "../../../../src/core/music/network/infer.ts";
 import { readBase64, readHalf, readWeights } from "../../../../src/core/music/network/weights.ts";
 
@@ -24,6 +23,17 @@ const CHROMA_TOLERANCE = 0.05;
 
 const RATE = 22_050;
 const ROWS = 72;
+
+function hear(mono: Float32Array, rate: number): Heard {
+	const listener = createListener(rate, 1);
+	listener.push([mono]);
+	return listener.finish();
+}
+
+function beatActivation(mono: Float32Array, rate: number, onProgress?: (share: number) => void) {
+	const { bands, harmony } = hear(mono, rate);
+	return networkActivation(bands, harmony, onProgress);
+}
 
 const floats = (text: string): Float32Array => new Float32Array(readBase64(text).slice().buffer);
 
@@ -67,8 +77,8 @@ describe("beat network", () => {
 	});
 
 	it("hears what the training side hears", () => {
-		const heard = levelOut(exampleSignal(examples.signalSeconds));
-		const features = prepare(hearBands(heard), hearHarmony(heard));
+		const { bands, harmony } = hear(exampleSignal(examples.signalSeconds), RATE);
+		const features = prepare(bands, harmony);
 		const expected = floats(examples.features);
 		let mel = 0;
 		let chroma = 0;
