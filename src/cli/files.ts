@@ -1,10 +1,12 @@
 import {
 	closeSync,
+	fstatSync,
 	fsyncSync,
 	mkdirSync,
 	openSync,
 	readdirSync,
 	readFileSync,
+	readSync,
 	renameSync,
 	rmSync,
 	statSync,
@@ -39,6 +41,45 @@ export function readBytes(path: string): Uint8Array {
 	} catch (error) {
 		throw new StarstaveError("command", `${path} can't be read: ${reasonOf(error)}.`, { cause: error });
 	}
+}
+
+/** A file that is read piece by piece. */
+export interface OpenFile {
+	/** Bytes. */
+	readonly size: number;
+	/** Bytes `from` … `to`. @throws StarstaveError as `readBytes` does */
+	read(from: number, to: number): Uint8Array;
+	close(): void;
+}
+
+/** @throws StarstaveError one sentence with the path as the user gave it */
+export function openFile(path: string): OpenFile {
+	const attempt = <T>(work: () => T): T => {
+		try {
+			return work();
+		} catch (error) {
+			throw new StarstaveError("command", `${path} can't be read: ${reasonOf(error)}.`, { cause: error });
+		}
+	};
+	const file = attempt(() => openSync(path, "r"));
+	const read = (from: number, to: number): Uint8Array => {
+		const bytes = new Uint8Array(to - from);
+		for (let at = 0; at < bytes.length; ) {
+			const count = readSync(file, bytes, at, bytes.length - at, from + at);
+			if (count === 0) return bytes.subarray(0, at); // it has become shorter meanwhile
+			at += count;
+		}
+		return bytes;
+	};
+	return {
+		// A folder opens, but can't be read.
+		size: attempt(() => {
+			read(0, 1);
+			return fstatSync(file).size;
+		}),
+		read: (from, to) => attempt(() => read(from, to)),
+		close: () => closeSync(file),
+	};
 }
 
 export function exists(path: string): boolean {

@@ -1,58 +1,86 @@
 import { existsSync } from "node:fs";
 import { basename, dirname, join } from "node:path";
-import { decodeAudio, type Samples } from "../core/decode/index.ts";
-import { sha256Hex } from "../core/maths/index.ts";
-import { type Analysis, analyse } from "../core/music/index.ts";
+import {
+	type AudioPiece,
+	type ByteSource,
+	decodeAudio,
+	openAudio,
+	type Samples,
+	sourceOf,
+} from "../core/decode/index.ts";
+import { createSha256, sha256Hex } from "../core/maths/index.ts";
+import { type Analysis, analysePieces } from "../core/music/index.ts";
 import { type Curve, type Show, type Soundtrack, toList } from "../core/show/index.ts";
 import { StarstaveError } from "../core/units/index.ts";
-import { readBytes } from "./files.ts";
+import { openFile, readBytes } from "./files.ts";
 import { cpuSince, type Progress, secondsSince } from "./progress.ts";
 
 /** A soundtrack with everything heard in it. */
 export interface Track {
-	readonly bytes: Uint8Array;
-	readonly samples: Samples;
 	readonly soundtrack: Soundtrack;
 	readonly analysis: Analysis;
+	/** What the user should know of the file and of the music. */
+	readonly notes: readonly string[];
 	/** Seconds. */
 	readonly timing: { readonly decode: number; readonly analyse: number; readonly cpu: number };
 }
 
-/** Bytes of an audio file → samples, and what the show remembers of it. */
-export async function decodeTrack(
-	bytes: Uint8Array,
-	name: string,
-): Promise<{ samples: Samples; soundtrack: Soundtrack }> {
-	const samples = await decodeAudio(bytes, name);
-	const soundtrack: Soundtrack = {
-		file: basename(name),
-		sha256: sha256Hex(bytes),
-		duration: samples.channels[0].length / samples.sampleRate,
-		sampleRate: samples.sampleRate,
-		channels: samples.channels.length,
-	};
-	return { samples, soundtrack };
+/** Bytes of a source that are taken at a time for its hash. */
+const HASHED = 1 << 20;
+
+async function hashOf(source: ByteSource): Promise<string> {
+	const digest = createSha256();
+	for (let at = 0; at < source.size; at += HASHED) {
+		digest.update(await source.read(at, Math.min(source.size, at + HASHED)));
+	}
+	return digest.hex();
 }
 
-export async function hearTrack(bytes: Uint8Array, name: string, progress: Progress): Promise<Track> {
+/** Decodes and analyses a soundtrack piece by piece, holding no more of it than a piece. */
+async function hear(source: ByteSource, path: string, progress: Progress): Promise<Track> {
 	const cpu = process.cpuUsage();
 	const start = performance.now();
-	progress.tell(0, `decoding ${basename(name)}`);
-	const { samples, soundtrack } = await decodeTrack(bytes, name);
-	const decoded = performance.now();
-	const analysis = analyse(samples, { onProgress: (share, stage) => progress.tell(share, stage) });
+	const name = basename(path);
+	const stream = await openAudio(source, name);
+	let decode = 0;
+	async function* timed(): AsyncGenerator<AudioPiece> {
+		let asked = performance.now();
+		for await (const piece of stream.pieces()) {
+			decode += secondsSince(asked);
+			yield piece;
+			asked = performance.now();
+		}
+		decode += secondsSince(asked);
+	}
+	const analysis = await analysePieces(timed, { onProgress: (share, stage) => progress.tell(share, stage) });
+	const analyse = secondsSince(start) - decode;
+	const { duration, sampleRate, channels } = analysis;
 	return {
-		bytes,
-		samples,
-		soundtrack,
+		soundtrack: { file: name, sha256: await hashOf(source), duration, sampleRate, channels },
 		analysis,
-		timing: { decode: (decoded - start) / 1000, analyse: secondsSince(decoded), cpu: cpuSince(cpu) },
+		notes: [...stream.notes(), ...analysis.notes],
+		timing: { decode, analyse, cpu: cpuSince(cpu) },
 	};
 }
 
-/** Reads, decodes and analyses the audio file at `path`. */
-export function hearFile(path: string, progress: Progress): Promise<Track> {
-	return hearTrack(readBytes(path), path, progress);
+/** Decodes and analyses the audio file at `path`. */
+export async function hearFile(path: string, progress: Progress): Promise<Track> {
+	const file = openFile(path);
+	try {
+		return await hear(file, path, progress);
+	} finally {
+		file.close();
+	}
+}
+
+/** The same with the file's bytes and all of its samples, for what holds two soundtracks against each other. */
+export async function hearWhole(
+	path: string,
+	progress: Progress,
+): Promise<Track & { readonly bytes: Uint8Array; readonly samples: Samples }> {
+	const bytes = readBytes(path);
+	const track = await hear(sourceOf(bytes), path, progress);
+	return { ...track, bytes, samples: await decodeAudio(bytes, basename(path)) };
 }
 
 /** Audio packed with a show. */
@@ -103,7 +131,7 @@ export async function hearCurves(
 ): Promise<readonly Curve[] | null> {
 	const found = readOwnTrack(show, showPath, packed, named);
 	if (!followsMusic(show)) return [];
-	return found === null ? null : (await hearTrack(found.bytes, found.name, progress)).analysis.curves;
+	return found === null ? null : (await hear(sourceOf(found.bytes), found.name, progress)).analysis.curves;
 }
 
 /** Samples of the show's own soundtrack; null where it is not at hand. */

@@ -4,7 +4,7 @@ import type { Progress } from "../progress.ts";
 import { hearFile, type Track } from "../tracks.ts";
 
 /** What is heard in a track, under the keys of the JSON answer. */
-export function describeTrack({ soundtrack, analysis, samples, timing }: Track) {
+export function describeTrack({ soundtrack, analysis, notes, timing }: Track) {
 	return {
 		soundtrack,
 		tempo: analysis.tempo,
@@ -19,7 +19,7 @@ export function describeTrack({ soundtrack, analysis, samples, timing }: Track) 
 			rate: analysis.loudness.rate,
 		},
 		moments: analysis.moments,
-		notes: [...samples.notes, ...analysis.notes],
+		notes,
 		timing,
 	};
 }

@@ -2,6 +2,7 @@ import { roughCut } from "../../core/draft/index.ts";
 import { toList } from "../../core/show/index.ts";
 import type { Answer } from "../answer.ts";
 import { type Arguments, numberFlag } from "../arguments.ts";
+import { readBytes } from "../files.ts";
 import { flyWhole } from "../fly.ts";
 import type { Progress } from "../progress.ts";
 import { requireShowPlace, writeShowFile } from "../shows.ts";
@@ -22,7 +23,7 @@ export async function runDraft(given: Arguments, progress: Progress): Promise<An
 	const { show } = cut;
 	// What was cut is checked from the show alone, as `check` would from the file.
 	const flown = await flyWhole(show, track.analysis.curves, progress, cut.plans);
-	writeShowFile(out, show, { name: track.soundtrack.file, bytes: track.bytes });
+	writeShowFile(out, show, { name: track.soundtrack.file, bytes: readBytes(path) });
 	const cues = { colour: 0, intensity: 0, transition: 0 };
 	for (const cue of toList(show.cues)) cues[cue.kind] += 1;
 	const json = {

@@ -5,7 +5,7 @@ import type { Answer } from "../answer.ts";
 import type { Arguments } from "../arguments.ts";
 import { type Progress, secondsSince } from "../progress.ts";
 import { readShowFile, requireShowPlace, writeShowFile } from "../shows.ts";
-import { decodeOwnTrack, hearFile } from "../tracks.ts";
+import { decodeOwnTrack, hearWhole } from "../tracks.ts";
 
 export async function runRetime(given: Arguments, progress: Progress): Promise<Answer> {
 	const [path, track] = given.operands;
@@ -19,7 +19,7 @@ export async function runRetime(given: Arguments, progress: Progress): Promise<A
 			name === undefined ? "give the show a soundtrack first" : `put ${name} beside it, or name it with --soundtrack`;
 		throw new StarstaveError("soundtrack", `${path} can't be retimed without its old soundtrack; ${right}.`);
 	}
-	const heard = await hearFile(track, progress);
+	const heard = await hearWhole(track, progress);
 	const start = performance.now();
 	const { beats, bars } = show.grid;
 	const map = mapEdit(old, heard.samples, {
