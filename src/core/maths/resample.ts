@@ -4,7 +4,7 @@
  * flat up to 0.89 of the lower rate's half and gone from 1.11 of it on: half amplitude lies at the half itself.
  */
 
-/** Zero crossings of the sinc on each side, in samples of the lower of the two rates. */
+/** Zero crossings of the sinc on each side where nothing else is asked for. */
 const CROSSINGS = 20;
 const KAISER_BETA = 7;
 /** Phases kept in the table where the ratio of the rates has no small denominator. */
@@ -37,14 +37,16 @@ export interface Resampler {
 /**
  * @param from Hz, whole
  * @param to Hz, whole
+ * @param crossings zero crossings of the sinc on each side, in samples of the lower of the two rates: with fewer the band
+ * ends less sharply, and the work is less
  * @returns a resampler that gives ceil(length · to / from) samples in all; a copy where the rates are the same
  */
-export function createResampler(from: number, to: number): Resampler {
+export function createResampler(from: number, to: number, crossings = CROSSINGS): Resampler {
 	if (from === to) return { push: (samples) => samples.slice(), finish: () => new Float32Array(0) };
 	const divisor = greatestDivisor(Math.round(from), Math.round(to));
 	const step = from / to; // input samples an output sample
 	const phases = Math.min(to / divisor, MOST_PHASES);
-	const reach = Math.ceil(CROSSINGS * Math.max(1, step));
+	const reach = Math.ceil(crossings * Math.max(1, step));
 	const table = kernelTable(phases, reach, Math.min(1, 1 / step));
 	const decimate = phases === 1 ? createDecimator(step, table) : null;
 	// Input samples base … base + count lie in `held`; the signal begins after `reach` zeros.

@@ -10,6 +10,8 @@ export interface RealTransform {
 	readonly size: number;
 	/** Spectrum of `input` (size samples): bins 0 … size/2, interleaved re, im, into `out` (size + 2 values). */
 	forward(input: Float64Array | Float32Array, out: Float64Array): void;
+	/** |X| · scale of bins 0 … size/2 of `input` (size samples, left as they are) into `out`. */
+	magnitudes(input: Float64Array, scale: number, out: Float32Array | Float64Array): void;
 	/** The signal (size samples) of a spectrum as `forward` writes it, into `out`. */
 	inverse(spectrum: Float64Array, out: Float64Array | Float32Array): void;
 }
@@ -53,7 +55,25 @@ export function createRealTransform(size: number): RealTransform {
 		fft.inverseTransform(turned, packed);
 		for (let i = 0; i < size; i++) out[i] = turned[i];
 	};
-	return { size, forward, inverse };
+	const magnitudes = (input: Float64Array, scale: number, out: Float32Array | Float64Array): void => {
+		fft.transform(turned, input);
+		out[0] = Math.abs(turned[0] + turned[1]) * scale;
+		out[half] = Math.abs(turned[0] - turned[1]) * scale;
+		// Bins k and half − k come of the same two values: even ± turned odd part.
+		for (let k = 1; k <= half >> 1; k++) {
+			const a = 2 * k;
+			const b = 2 * (half - k);
+			const evenRe = (turned[a] + turned[b]) / 2;
+			const evenIm = (turned[a + 1] - turned[b + 1]) / 2;
+			const oddRe = (turned[a + 1] + turned[b + 1]) / 2;
+			const oddIm = (turned[b] - turned[a]) / 2;
+			const re = oddRe * cosines[k] + oddIm * sines[k];
+			const im = oddIm * cosines[k] - oddRe * sines[k];
+			out[k] = Math.sqrt((evenRe + re) ** 2 + (evenIm + im) ** 2) * scale;
+			out[half - k] = Math.sqrt((evenRe - re) ** 2 + (evenIm - im) ** 2) * scale;
+		}
+	};
+	return { size, forward, magnitudes, inverse };
 }
 
 /** Hann window, periodic: value i is ½ − ½ cos(2πi/size). */
@@ -74,19 +94,14 @@ export function createFrameSpectrum(
 	const window = hannWindow(size);
 	const scale = 2 / window.reduce((sum, w) => sum + w, 0);
 	const frame = new Float64Array(size);
-	const spectrum = new Float64Array(size + 2);
 	return (signal, centre, out) => {
 		const from = centre - size / 2;
-		for (let i = 0; i < size; i++) {
-			const at = from + i;
-			frame[i] = at >= 0 && at < signal.length ? signal[at] * window[i] : 0;
-		}
-		transform.forward(frame, spectrum);
-		for (let k = 0; k <= size / 2; k++) {
-			const re = spectrum[2 * k];
-			const im = spectrum[2 * k + 1];
-			out[k] = Math.sqrt(re * re + im * im) * scale;
-		}
+		const first = Math.max(0, Math.min(size, -from));
+		const last = Math.max(first, Math.min(size, signal.length - from));
+		frame.fill(0, 0, first);
+		for (let i = first; i < last; i++) frame[i] = signal[from + i] * window[i];
+		frame.fill(0, last);
+		transform.magnitudes(frame, scale, out);
 	};
 }
 

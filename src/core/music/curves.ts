@@ -90,11 +90,16 @@ export function createPeakDrawer(sampleRate: number): PeakDrawer {
 				const edge = edgeOf(pairs + 1);
 				const to = Math.min(length, at + edge - done);
 				for (const channel of channels) {
+					// locals: what a closure holds is read and written through memory
+					let least = low;
+					let most = high;
 					for (let i = at; i < to; i++) {
 						const x = channel[i];
-						if (x < low) low = x;
-						if (x > high) high = x;
+						if (x < least) least = x;
+						if (x > most) most = x;
 					}
+					low = least;
+					high = most;
 				}
 				done += to - at;
 				at = to;

@@ -10,6 +10,8 @@ export const CHROMA_SIZE = 24;
 export const CHROMA_RATE = 25;
 const LOWERED = 4;
 const LOW_RATE = HEARING_RATE / LOWERED;
+/** Zero crossings of the filter that lowers the rate: what folds lies above 2.1 kHz, where the middle register ends. */
+const CROSSINGS = 8;
 const WINDOW = 1024;
 /** MIDI note numbers, inclusive: middle register, bass register. */
 const REGISTERS = [
@@ -64,7 +66,7 @@ function weighBins(): { binOf: Int32Array; rowOf: Int32Array; weightOf: Float32A
 
 export function createHarmonyEar(): HarmonyEar {
 	const { binOf, rowOf, weightOf } = weighBins();
-	const lower = createResampler(LOWERED, 1);
+	const lower = createResampler(LOWERED, 1, CROSSINGS);
 	const rows = createGrowing();
 	let samples = 0;
 	const frames = createFrameStream(

@@ -69,6 +69,27 @@ export function priorOf(interval: number): number {
 	return -0.5 * PRIOR_WEIGHT * octaves * octaves;
 }
 
+/**
+ * Frame by frame the intervals that need looking at: those allowed in any of the frames that a beat can reach it from,
+ * and one round of the ring before, so that what the ring still holds of an interval is overwritten when it ceases.
+ */
+function reachOf({ low, high }: { low: Uint8Array; high: Uint8Array }): { low: Uint8Array; high: Uint8Array } {
+	const spread = (values: Uint8Array, isBetter: (a: number, b: number) => boolean): Uint8Array => {
+		const out = new Uint8Array(values.length);
+		// A queue of frames whose values only get worse: its head is the best of the last two rounds.
+		const queue: number[] = [];
+		let head = 0;
+		for (let t = 0; t < values.length; t++) {
+			while (queue.length > head && !isBetter(values[queue[queue.length - 1]], values[t])) queue.pop();
+			queue.push(t);
+			if (queue[head] <= t - 2 * RING) head++;
+			out[t] = values[queue[head]];
+		}
+		return out;
+	};
+	return { low: spread(low, (a, b) => a < b), high: spread(high, (a, b) => a > b) };
+}
+
 /** The intervals that a walk near `factor` times its guide's may take: first and last index for each frame. */
 function guideBand(
 	guide: Float64Array,
@@ -106,6 +127,7 @@ export function walkBeats(
 	for (let tau = (60 / FASTEST) * RATE; tau <= (60 / SLOWEST) * RATE + 1e-9; tau *= TEMPO_STEP) intervals.push(tau);
 	const n = intervals.length;
 	const band = guide ? guideBand(guide.beats, guide.factor, intervals, frames) : null;
+	const within = band ? reachOf(band) : null;
 	const stepCost = TEMPO_CHANGE * Math.log(TEMPO_STEP);
 	// For each interval the first of its three durations, what each costs, and how likely people tap it.
 	const shortest = Int32Array.from(intervals, (tau) => Math.round(tau) - 1);
@@ -135,8 +157,10 @@ export function walkBeats(
 	for (let t = 0; t < frames; t++) {
 		if (onProgress && t % Math.max(1, Math.floor(frames / 50)) === 0) onProgress(t / frames);
 		const slot = t % RING;
-		let peak = 0;
-		for (let i = 0; i < n; i++) {
+		const first = within ? within.low[t] : 0;
+		const last = within ? within.high[t] : n - 1;
+		let peak = first;
+		for (let i = first; i <= last; i++) {
 			const at = i * 2 * RING + RING + slot - shortest[i];
 			const a = best[at] - costs[i * DURATIONS];
 			const b = best[at - 1] - costs[i * DURATIONS + 1];
@@ -148,8 +172,8 @@ export function walkBeats(
 		}
 		// Two running maxima: origin[i] is the interval that the walk had before.
 		let carried = Number.NEGATIVE_INFINITY;
-		let from = 0;
-		for (let i = 0; i < n; i++) {
+		let from = first;
+		for (let i = first; i <= last; i++) {
 			carried -= stepCost;
 			if (arrives[i] >= carried) {
 				carried = arrives[i];
@@ -158,7 +182,7 @@ export function walkBeats(
 			reached[i] = carried;
 			origin[i] = from;
 		}
-		for (let i = n - 1; i >= 0; i--) {
+		for (let i = last; i >= first; i--) {
 			carried -= stepCost;
 			if (reached[i] >= carried) {
 				carried = reached[i];
@@ -174,7 +198,7 @@ export function walkBeats(
 		const high = band ? band.high[t] : n - 1;
 		const begin = START_COST - (UNCOVERED * t) / RATE;
 		const rest = (UNCOVERED * (frames - t)) / RATE;
-		for (let i = 0; i < n; i++) {
+		for (let i = first; i <= last; i++) {
 			let value = reached[i];
 			const away = origin[i] - i + REACH;
 			let how = JUMP;

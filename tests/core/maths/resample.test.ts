@@ -78,6 +78,11 @@ describe("real transform", () => {
 				expect(spectrum[2 * k]).toBeCloseTo(re, 10);
 				expect(spectrum[2 * k + 1]).toBeCloseTo(im, 10);
 			}
+			const magnitudes = new Float64Array(size / 2 + 1);
+			transform.magnitudes(signal, 3, magnitudes);
+			for (let k = 0; k <= size / 2; k++) {
+				expect(magnitudes[k]).toBeCloseTo(3 * Math.hypot(spectrum[2 * k], spectrum[2 * k + 1]), 10);
+			}
 			const back = new Float64Array(size);
 			transform.inverse(spectrum, back);
 			back.forEach((x, i) => {

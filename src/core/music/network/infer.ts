@@ -5,7 +5,9 @@
  * Every layer is a gathering of inputs into rows and one multiplication (multiply.ts), block by block of frames, so
  * that what is gathered stays in the cache. Arrays lie frame after frame.
  */
-import { createMultiplier, type Multiplier, ROWS_TOGETHER } from "./multiply.ts";
+import { ROWS_TOGETHER } from "./multiply.ts";
+import { BLOCK, elu, FIRST_SIZE, frameAt, type Pass, type Placed, rowAt, run, SECOND_SIZE, startPass } from "./pass.ts";
+import { passBlock } from "./residual.ts";
 import {
 	CHANNELS,
 	CHROMA_ROWS,
@@ -13,73 +15,12 @@ import {
 	FIRST_BANDS,
 	JOINED,
 	KERNEL,
-	type Layer,
 	MEL_ROWS,
 	type NetworkWeights,
 	ROWS,
 	SECOND,
 	SECOND_BANDS,
 } from "./weights.ts";
-
-/** Frames that go through a layer together; a multiple of 4. */
-const BLOCK = 64;
-/** Inputs of one output of the first and second convolution, and of a block's. */
-const FIRST_SIZE = KERNEL * 3;
-const SECOND_SIZE = 9 * FIRST;
-const WIDE_SIZE = KERNEL * CHANNELS;
-/** Numbers gathered for a block of frames: the second convolution needs most. The first sees two frames more. */
-const GATHERED = Math.max((BLOCK + 4) * MEL_ROWS * FIRST_SIZE, BLOCK * FIRST_BANDS * SECOND_SIZE);
-const ANSWERED = (BLOCK + 4) * MEL_ROWS * SECOND;
-
-const elu = (x: number): number => (x > 0 ? x : Math.expm1(x));
-
-/** A layer in the multiplier's arena. */
-interface Placed {
-	readonly weight: number;
-	readonly bias: number;
-	readonly size: number;
-	readonly outputs: number;
-}
-
-/** Everything a pass works with: one arena holds gathered rows, answers and weights. */
-interface Pass {
-	readonly multiplier: Multiplier;
-	/** Where rows are gathered, and where the answers of a multiplication go. */
-	readonly rows: number;
-	readonly answer: number;
-	readonly place: (layer: Layer) => Placed;
-}
-
-function startPass(): Pass {
-	const most = WIDE_SIZE * CHANNELS + CHANNELS; // the largest layer, with its biases
-	const multiplier = createMultiplier(GATHERED + ANSWERED + 2 * most);
-	const { arena } = multiplier;
-	let next = GATHERED + ANSWERED;
-	const place = ({ weight, bias }: Layer): Placed => {
-		const size = weight.length / bias.length;
-		const outputs = Math.ceil(bias.length / 8) * 8;
-		// Two layers are in use at a time at most; a third goes where the first was.
-		if (next + (size + 1) * outputs > arena.length) next = GATHERED + ANSWERED;
-		const at = next;
-		arena.fill(0, at, at + (size + 1) * outputs);
-		for (let o = 0; o < bias.length; o++) {
-			for (let k = 0; k < size; k++) arena[at + k * outputs + o] = weight[o * size + k];
-			arena[at + size * outputs + o] = bias[o];
-		}
-		next = at + (size + 1) * outputs;
-		return { weight: at, bias: at + size * outputs, size, outputs };
-	};
-	return { multiplier, rows: 0, answer: GATHERED, place };
-}
-
-/** Multiplies what is gathered; `count` rows, filled up to a multiple of four with whatever lies there. */
-function run({ multiplier, rows, answer }: Pass, layer: Placed, count: number): void {
-	const full = Math.ceil(count / ROWS_TOGETHER) * ROWS_TOGETHER;
-	multiplier.multiply(rows, layer.weight, layer.bias, answer, full, layer.size, layer.outputs);
-}
-
-/** Where row r's first value is gathered; its value k lies 4 k further. */
-const rowAt = (row: number, size: number): number => (row >> 2) * 4 * size + (row & 3);
 
 /**
  * @param input frame i's ROWS values at i · ROWS, as `features.ts` gives them
@@ -105,7 +46,7 @@ export function infer(
 	for (let i = 0; i < frames; i++) {
 		for (let o = 0; o < 2; o++) {
 			let sum = bias[o];
-			for (let c = 0; c < CHANNELS; c++) sum += weight[o * CHANNELS + c] * now[i * CHANNELS + c];
+			for (let c = 0; c < CHANNELS; c++) sum += weight[o * CHANNELS + c] * now[frameAt(i) + 4 * c];
 			logits[2 * i + o] = sum;
 		}
 	}
@@ -214,10 +155,10 @@ function convolveSecond(
 	}
 }
 
-/** Bands and chroma to CHANNELS values a frame. */
+/** Bands and chroma to CHANNELS values a frame, in fours of frames (see frameAt). */
 function joinBands(pass: Pass, input: Float32Array, bands: Float32Array, weights: NetworkWeights): Float32Array {
 	const frames = input.length / ROWS;
-	const out = new Float32Array(frames * CHANNELS);
+	const out = new Float32Array(Math.ceil(frames / ROWS_TOGETHER) * ROWS_TOGETHER * CHANNELS);
 	const { arena } = pass.multiplier;
 	const layer = pass.place(weights.join);
 	const fromBands = SECOND_BANDS * SECOND;
@@ -230,40 +171,11 @@ function joinBands(pass: Pass, input: Float32Array, bands: Float32Array, weights
 			for (let k = 0; k < CHROMA_ROWS; k++) arena[row + 4 * (fromBands + k)] = input[chroma + k];
 		}
 		run(pass, layer, count);
-		for (let k = 0; k < count * CHANNELS; k++) out[from * CHANNELS + k] = elu(arena[pass.answer + k]);
+		for (let i = 0; i < count; i++) {
+			const at = frameAt(from + i);
+			const answer = pass.answer + i * CHANNELS;
+			for (let c = 0; c < CHANNELS; c++) out[at + 4 * c] = elu(arena[answer + c]);
+		}
 	}
 	return out;
-}
-
-/** One residual block: x + mix(elu(wide(x))). */
-function passBlock(
-	pass: Pass,
-	x: Float32Array,
-	frames: number,
-	dilation: number,
-	wide: Placed,
-	mix: Placed,
-	out: Float32Array,
-): void {
-	const { arena } = pass.multiplier;
-	for (let from = 0; from < frames; from += BLOCK) {
-		const count = Math.min(BLOCK, frames - from);
-		for (let i = 0; i < count; i++) {
-			const row = pass.rows + rowAt(i, WIDE_SIZE);
-			for (let tap = 0; tap < KERNEL; tap++) {
-				const source = from + i + (tap - 2) * dilation;
-				const inside = source >= 0 && source < frames;
-				const to = row + 4 * tap * CHANNELS;
-				for (let c = 0; c < CHANNELS; c++) arena[to + 4 * c] = inside ? x[source * CHANNELS + c] : 0;
-			}
-		}
-		run(pass, wide, count);
-		for (let i = 0; i < count; i++) {
-			const row = pass.rows + rowAt(i, CHANNELS);
-			for (let c = 0; c < CHANNELS; c++) arena[row + 4 * c] = elu(arena[pass.answer + i * CHANNELS + c]);
-		}
-		run(pass, mix, count);
-		const base = from * CHANNELS;
-		for (let k = 0; k < count * CHANNELS; k++) out[base + k] = x[base + k] + arena[pass.answer + k];
-	}
 }
