@@ -1,3 +1,4 @@
+import { nearestOnset } from "../core/music/index.ts";
 import {
 	applyEdit,
 	changeCue,
@@ -6,13 +7,14 @@ import {
 	type DraftShow,
 	type EditResult,
 	find,
+	moveBeat,
 	moveCues,
 	type Show,
 	type TransitionCue,
 	transitionsInTime,
 } from "../core/show/index.ts";
 import { StarstaveError } from "../core/units/index.ts";
-import type { CueDrag, Drag } from "./commands/command-types.ts";
+import type { BeatDrag, CueDrag, Drag } from "./commands/command-types.ts";
 import type { Workbench } from "./workbench.ts";
 
 /** Begins a drag: one step of undo, whatever happens on the way. Null where edits are refused. */
@@ -159,4 +161,25 @@ function boundsOf(show: Show, ids: readonly string[], part: "departs" | "arrives
 		}
 	});
 	return bounds;
+}
+
+/** Seconds on either side of the pointer in which a beat finds an onset. */
+const ONSET_REACH = 0.03;
+
+/** Begins the drag of one beat, as `BeatDrag` has it. */
+export function beginBeatDrag(bench: Workbench, beat: number): BeatDrag | null {
+	const { show, analysis } = bench.store.getState();
+	const from = show?.grid.beats[beat];
+	if (from === undefined) return null;
+	const drag = beginDrag(bench, "Move a beat");
+	if (drag === null) return null;
+	return {
+		update: (seconds, free) => {
+			const onset = free || analysis === null ? null : nearestOnset(analysis.peaks, seconds, ONSET_REACH);
+			const at = Math.round((onset ?? seconds) * 1000) / 1000;
+			return drag.update((draft) => moveBeat(draft, beat, at)) ?? { at, moved: at - from };
+		},
+		commit: drag.commit,
+		cancel: drag.cancel,
+	};
 }

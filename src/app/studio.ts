@@ -1,6 +1,6 @@
 import { createStore, type StoreApi } from "zustand/vanilla";
 import type { Player } from "../platform/player.ts";
-import type { Commands, CueDrag, Drag } from "./commands/command-types.ts";
+import type { BeatDrag, Commands, CueDrag, Drag } from "./commands/command-types.ts";
 import { cueCommands } from "./commands/cue-commands.ts";
 import { deskCommands } from "./commands/desk-commands.ts";
 import { documentCommands } from "./commands/document-commands.ts";
@@ -8,7 +8,7 @@ import { formationCommands } from "./commands/formation-commands.ts";
 import { gridCommands } from "./commands/grid-commands.ts";
 import { newEditCommands } from "./commands/new-edit-commands.ts";
 import { showCommands } from "./commands/show-commands.ts";
-import { beginCueDrag, beginDrag } from "./drag.ts";
+import { beginBeatDrag, beginCueDrag, beginDrag } from "./drag.ts";
 import { createFeasibility } from "./feasibility.ts";
 import { createInquiry } from "./inquiry.ts";
 import { createJobLedger } from "./job-ledger.ts";
@@ -28,6 +28,7 @@ export interface Studio {
 	readonly player: Player;
 	/** @param name as undo names it: "Move cue 12". Null where edits are refused. */
 	drag(name: string): Drag | null;
+	dragBeat(beat: number): BeatDrag | null;
 	dragCue(id: string, part: "departs" | "arrives" | "whole"): CueDrag | null;
 	/** Brings back what was kept in the browser, else opens the demo show. Once, when the screens stand. */
 	start(): Promise<void>;
@@ -100,6 +101,7 @@ export function createStudio(parts: StudioParts): Studio {
 		commands,
 		player,
 		drag: (name) => beginDrag(bench, name),
+		dragBeat: (beat) => beginBeatDrag(bench, beat),
 		dragCue: (id, part) => beginCueDrag(bench, id, part),
 		start: async () => {
 			let found = false;

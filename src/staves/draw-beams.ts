@@ -1,11 +1,11 @@
 import type { Verdict } from "../core/flight/index.ts";
-import type { RowPicture } from "./draw-row.ts";
+import { type RowPicture, xOf as xIn } from "./draw-row.ts";
 import type { Beam } from "./row-cues.ts";
 
 /** Transitions as beams from hold to hold; names of formations where they stand; marks of verdicts. */
 export function drawBeams(pen: CanvasRenderingContext2D, picture: RowPicture): void {
 	const { row, lanes, inks } = picture;
-	const xOf = (position: number) => (position - row.from) * picture.pixelsPerBeat;
+	const xOf = (position: number) => xIn(picture, position);
 	const middle = lanes.beamTop + lanes.beamHeight / 2;
 	for (const hold of picture.score.holds) {
 		if (hold.to <= row.from || hold.from >= row.to) continue;
@@ -25,11 +25,24 @@ export function drawBeams(pen: CanvasRenderingContext2D, picture: RowPicture): v
 		const room = x1 - x0 - 8;
 		if (room > 24) nameHold(pen, hold.name, x0 + (x0 < 1 ? 10 : 4), lanes.beamTop - 4, room, picture);
 	}
-	for (const beam of picture.score.beams) {
-		const reach = Math.max(beam.arrives, beam.needs ?? 0);
-		if (reach <= row.from || beam.departs >= row.to) continue;
+	const here = picture.score.beams
+		.filter((beam) => Math.max(beam.arrives, beam.needs ?? 0) > row.from && beam.departs < row.to)
+		.sort((a, b) => a.departs - b.departs);
+	here.forEach((beam, i) => {
 		drawBeam(pen, beam, picture, xOf);
-	}
+		const next = here[i + 1];
+		nameBeam(pen, beam, Math.max(xOf(beam.departs), 0) + 18, next ? xOf(next.departs) - 4 : picture.width, picture);
+	});
+}
+
+/** The cue's number, and whether it is called, as far as there is room before the next. */
+function nameBeam(pen: CanvasRenderingContext2D, beam: Beam, x: number, end: number, picture: RowPicture): void {
+	if (picture.pixelsPerBeat <= 14) return;
+	pen.font = `12px ${picture.inks.serif}`;
+	pen.fillStyle = picture.inks.quiet;
+	const texts = beam.called ? [`${beam.number} called`, beam.number] : [beam.number];
+	const text = texts.find((one) => x + pen.measureText(one).width <= end);
+	if (text) pen.fillText(text, x, picture.lanes.markY + 4);
 }
 
 function nameHold(
@@ -73,11 +86,6 @@ function drawBeam(
 	pen.stroke();
 	if (beam.needs !== null && beam.short > 1e-6) drawShort(pen, beam, picture, x1, xOf(beam.needs));
 	drawVerdict(pen, beam.verdict, Math.max(x0 + 7, Math.min(8, x1)), lanes.markY, inks);
-	if (picture.pixelsPerBeat > 14) {
-		pen.font = `12px ${inks.serif}`;
-		pen.fillStyle = inks.quiet;
-		pen.fillText(beam.called ? `${beam.number} called` : beam.number, Math.max(x0, 0) + 18, lanes.markY + 4);
-	}
 	if (beam.selected) {
 		pen.strokeStyle = inks.ink;
 		pen.setLineDash([3, 3]);
@@ -94,25 +102,27 @@ function drawBeam(
 function drawShort(pen: CanvasRenderingContext2D, beam: Beam, picture: RowPicture, x1: number, xNeeds: number): void {
 	const { lanes, inks } = picture;
 	const middle = lanes.beamTop + lanes.beamHeight / 2;
-	const tip = Math.max(x1 + 14, xNeeds);
+	// It stays within the line, whose end may lie nearer than where the flight would arrive.
+	const tip = Math.min(Math.max(x1 + 14, xNeeds), picture.width + 2);
+	const start = Math.min(x1 + 1, tip - 12);
 	const [y0, y1] = [middle - 4, middle + 4];
 	pen.strokeStyle = inks.trouble;
 	pen.fillStyle = inks.page;
 	pen.lineWidth = 1.5;
 	pen.beginPath();
-	pen.moveTo(x1 + 1, y0);
+	pen.moveTo(start, y0);
 	pen.lineTo(tip - 7, y0);
 	pen.lineTo(tip - 7, y0 - 3);
 	pen.lineTo(tip, middle);
 	pen.lineTo(tip - 7, y1 + 3);
 	pen.lineTo(tip - 7, y1);
-	pen.lineTo(x1 + 1, y1);
+	pen.lineTo(start, y1);
 	pen.fill();
 	pen.stroke();
 	pen.font = `13px ${inks.sans}`;
 	const words = `${beam.short < 0.05 ? "<0.1" : beam.short.toFixed(1)} beats short`;
 	const wide = pen.measureText(words).width;
-	const x = tip + 6 + wide < picture.width ? tip + 6 : Math.max(4, x1 - wide - 8);
+	const x = tip + 6 + wide < picture.width ? tip + 6 : Math.max(4, start - wide - 8);
 	pen.fillStyle = inks.page;
 	pen.globalAlpha = 0.8;
 	pen.fillRect(x - 3, middle - 8, wide + 6, 16);

@@ -11,11 +11,16 @@ export interface RowPicture {
 	readonly lanes: Lanes;
 	readonly width: number;
 	readonly pixelsPerBeat: number;
+	/** The map by which the line is even in beats. */
 	readonly beatMap: BeatMap;
+	/** How many beats the grid has. */
+	readonly beats: number;
+	/** Where in the line a position stands: the position itself, but while a beat is dragged over the music. */
+	readonly placeOf: (position: number) => number;
 	readonly score: CueScore;
 	readonly inks: Inks;
 	readonly ribbonGroups: readonly string[];
-	/** Positions of beats that the analysis is unsure of, for a fainter tick. */
+	/** Positions of beats that want listening to. */
 	readonly unsure: ReadonlySet<number>;
 	readonly moments: readonly { readonly at: number; readonly kind: string }[];
 }
@@ -30,6 +35,7 @@ export function drawRow(pen: CanvasRenderingContext2D, picture: RowPicture, rati
 	// Arrows and names of the last beam may stand out of the line, as an engraver lets a slur run on.
 	pen.rect(-4, 0, width + 4, lanes.height);
 	pen.clip();
+	drawDoubt(pen, picture);
 	drawGrid(pen, picture);
 	drawRibbons(pen, picture);
 	drawLevel(pen, picture);
@@ -38,7 +44,9 @@ export function drawRow(pen: CanvasRenderingContext2D, picture: RowPicture, rati
 	pen.restore();
 }
 
-const xOf = (picture: RowPicture, position: number) => (position - picture.row.from) * picture.pixelsPerBeat;
+/** CSS pixels from the line's start. */
+export const xOf = (picture: RowPicture, position: number): number =>
+	(picture.placeOf(position) - picture.row.from) * picture.pixelsPerBeat;
 
 function drawGrid(pen: CanvasRenderingContext2D, picture: RowPicture): void {
 	const { row, lanes, beatMap, inks, pixelsPerBeat } = picture;
@@ -56,9 +64,9 @@ function drawGrid(pen: CanvasRenderingContext2D, picture: RowPicture): void {
 			pen.moveTo(x, lanes.waveTop);
 			pen.lineTo(x, lanes.height - 4);
 		} else if (pixelsPerBeat >= 5) {
-			pen.strokeStyle = picture.unsure.has(beat) ? inks.hairline : inks.quiet;
+			pen.strokeStyle = inks.quiet;
 			pen.moveTo(x, lanes.ticks);
-			pen.lineTo(x, lanes.ticks + (picture.unsure.has(beat) ? 2 : 3));
+			pen.lineTo(x, lanes.ticks + 4);
 		}
 		pen.stroke();
 		// The section's name stands at the head of the line; a bar number must not run into it.
@@ -86,6 +94,34 @@ function drawGrid(pen: CanvasRenderingContext2D, picture: RowPicture): void {
 		pen.lineTo(x + 3, lanes.waveTop - 8);
 		pen.lineTo(x, lanes.waveTop - 2);
 		pen.fill();
+	}
+}
+
+/** Where the beat is uncertain the music is veiled, and a wavy line runs under it. */
+function drawDoubt(pen: CanvasRenderingContext2D, picture: RowPicture): void {
+	const { row, lanes, inks, unsure } = picture;
+	for (let beat = Math.floor(row.from); beat <= row.to; beat++) {
+		if (!unsure.has(beat)) continue;
+		let last = beat;
+		while (unsure.has(last + 1) && last < row.to) last++;
+		const x0 = Math.max(0, xOf(picture, beat - 0.5));
+		const x1 = Math.min(picture.width, xOf(picture, last + 0.5));
+		beat = last;
+		if (x1 <= x0) continue;
+		pen.fillStyle = inks.page;
+		pen.globalAlpha = 0.55;
+		pen.fillRect(x0, lanes.waveTop, x1 - x0, lanes.waveHeight);
+		pen.globalAlpha = 1;
+		pen.strokeStyle = inks.trouble;
+		pen.lineWidth = 1.25;
+		pen.beginPath();
+		const y = lanes.ticks + 1.5;
+		pen.moveTo(x0, y);
+		for (let x = x0, up = 1; x < x1; x += 5, up = -up) {
+			const to = Math.min(x1, x + 5);
+			pen.quadraticCurveTo((x + to) / 2, y + 4 * up, to, y);
+		}
+		pen.stroke();
 	}
 }
 

@@ -1,8 +1,9 @@
 import type { RowPicture } from "./draw-row.ts";
 
-/** What the pointer is on: a cue and which part of it, or the music itself. */
+/** What the pointer is on: a cue and which part of it, a beat's tick, or the music itself. */
 export type Target =
 	| { readonly kind: "cue"; readonly id: string; readonly part: DragPart }
+	| { readonly kind: "beat"; readonly beat: number }
 	| { readonly kind: "music" };
 
 /** `departs` and `arrives` are the ends of a transition; `whole` moves a cue as it is. */
@@ -10,11 +11,19 @@ export type DragPart = "departs" | "arrives" | "whole";
 
 /** Pixels on either side of an edge in which the pointer takes it. */
 const REACH = 6;
+/** The same for a beat's tick, and the narrowest beats that can be taken: closer ones are meant by nobody. */
+const BEAT_REACH = 4;
+const BEAT_LEAST = 9;
 
 /** @param x @param y CSS pixels from the row body's top left corner */
 export function targetAt(picture: RowPicture, x: number, y: number): Target {
 	const { lanes, row, score } = picture;
 	const xOf = (position: number) => (position - row.from) * picture.pixelsPerBeat;
+	if (y >= lanes.ticks - 8 && y < lanes.ticks + 6 && picture.pixelsPerBeat >= BEAT_LEAST) {
+		const beat = Math.round(row.from + x / picture.pixelsPerBeat);
+		const isBeat = beat >= 0 && beat < picture.beats;
+		if (isBeat && Math.abs(xOf(beat) - x) <= BEAT_REACH) return { kind: "beat", beat };
+	}
 	if (y >= lanes.markY - 8 && y <= lanes.beamTop + lanes.beamHeight + 4) {
 		// The selected beam first, so that its ends can be taken where two beams touch.
 		const beams = [...score.beams].sort((a, b) => Number(b.selected) - Number(a.selected));

@@ -51,13 +51,13 @@ export class StaveRow {
 		this.wave.style.height = `${lanes.waveHeight}px`;
 	}
 
-	draw(analysis: Analysis | null, peaksKey: string): void {
+	draw(analysis: Analysis | null, musicKey: string): void {
 		const picture = this.picture;
 		if (!picture) return;
 		const { row, lanes, width, beatMap } = picture;
 		if (analysis) {
 			const columns = Math.max(1, Math.round(width));
-			const key = `${peaksKey} ${row.from} ${row.to} ${columns} ${lanes.waveHeight}`;
+			const key = `${musicKey} ${row.from} ${row.to} ${columns} ${lanes.waveHeight}`;
 			this.waveform.show(peaksOnBeats(analysis.peaks, beatMap, row.from, row.to, columns), lanes.waveHeight, key);
 		} else this.waveform.clear();
 		const ratio = Math.min(2, window.devicePixelRatio || 1);

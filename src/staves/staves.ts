@@ -1,10 +1,11 @@
 import type { TransitionCheck } from "../core/flight/index.ts";
 import type { Analysis } from "../core/music/index.ts";
-import { DOUBTFUL } from "../core/music/index.ts";
+import { doubtfulBeats } from "../core/music/index.ts";
 import { type BeatMap, createBeatMap, endOfShow, type Show } from "../core/show/index.ts";
+import { attachPointing } from "./attach-pointing.ts";
 import { type Inks, readInks } from "./inks.ts";
 import { layLanes } from "./lanes.ts";
-import { type DragPart, snapPosition, targetAt } from "./pointing.ts";
+import type { DragPart } from "./pointing.ts";
 import { scoreCues } from "./row-cues.ts";
 import { longestRow, pageRows, type RowWindow } from "./row-layout.ts";
 import { StaveRow } from "./stave-row.ts";
@@ -34,6 +35,12 @@ export interface StavesHandlers {
 	 */
 	drag(beats: number): string | null;
 	endDrag(keep: boolean): void;
+	/** A drag of a beat begins; false refuses it. */
+	beginBeatDrag(beat: number): boolean;
+	/** @returns what is to be said at the pointer */
+	dragBeat(seconds: number, free: boolean): string;
+	endBeatDrag(keep: boolean): void;
+	insertBeat(after: number): void;
 	/** Ctrl and the wheel, or a pinch: zoom about a position. */
 	zoom(factor: number, about: number): void;
 }
@@ -64,40 +71,62 @@ export function createStaves(host: HTMLElement, handlers: StavesHandlers): Stave
 	let beatMap: BeatMap = createBeatMap({ beats: [], bars: [] });
 	let at = 0;
 	let revealed: StaveRow | null = null;
-	let peaksKey = "";
+	/** Says when the music must be laid on the beats anew: another analysis, other beats. */
+	let musicKey = 0;
 	let lastAnalysis: Analysis | null = null;
+	let lastBeats: readonly number[] = [];
+	/** The map as it was when the drag of a beat began: the music keeps still under the beats until it is over. */
+	let frozen: BeatMap | null = null;
 
 	const lay = () => {
 		if (!model) return;
 		const { show, analysis } = model;
-		beatMap = createBeatMap(show.grid);
+		const current = createBeatMap(show.grid);
+		beatMap = frozen ?? current;
+		const placeOf = (position: number) => (frozen === null ? position : frozen.positionAt(current.secondsAt(position)));
 		const windows: RowWindow[] = model.strip
 			? [stripRow(show, beatMap, model.strip)]
 			: pageRows(show.sections, beatMap, endOfShow(show, beatMap));
 		const curves = analysis?.curves ?? [];
-		const score = scoreCues(show, beatMap, model.checks, model.unchecked, model.selectedCues, curves);
+		const score = scoreCues(show, current, model.checks, model.unchecked, model.selectedCues, curves);
 		const groups = [...new Set(score.ribbons.map((piece) => piece.group))].sort(
 			(a, b) => Number(b === "all") - Number(a === "all") || (a < b ? -1 : 1),
 		);
 		const lanes = layLanes(model.strip !== null, groups.length);
 		const space = Math.max(200, host.clientWidth - HEAD - RIGHT);
 		const pixelsPerBeat = space / longestRow(windows);
-		if (analysis !== lastAnalysis || peaksKey === "") {
+		const music = frozen === null ? show.grid.beats : lastBeats;
+		if (analysis !== lastAnalysis || music !== lastBeats) {
 			lastAnalysis = analysis;
-			peaksKey = String(Number(peaksKey || 0) + 1);
+			lastBeats = music;
+			musicKey++;
 		}
-		const unsure = new Set<number>();
-		analysis?.beatConfidence.forEach((confidence, beat) => {
-			if (confidence < DOUBTFUL && show.grid.source === "analysed") unsure.add(beat);
-		});
-		const moments = (analysis?.moments ?? []).map((moment) => ({ at: moment.beat, kind: moment.kind }));
+		const unsure = new Set(analysis ? doubtfulBeats(show.grid, analysis) : []);
+		// The analysis counts its own beats; the grid may have more or fewer by now.
+		const moments = (analysis?.moments ?? []).map((moment) => ({
+			at: current.positionAt(analysis?.beats[moment.beat] ?? 0),
+			kind: moment.kind,
+		}));
 		while (rows.length > windows.length) rows.pop()?.destroy();
 		while (rows.length < windows.length) rows.push(addRow());
 		rows.forEach((row, i) => {
 			const window = windows[i];
 			const width = Math.max(8, (window.to - window.from) * pixelsPerBeat);
 			row.lay(
-				{ row: window, lanes, width, pixelsPerBeat, beatMap, score, inks, ribbonGroups: groups, unsure, moments },
+				{
+					row: window,
+					lanes,
+					width,
+					pixelsPerBeat,
+					beatMap,
+					beats: show.grid.beats.length,
+					placeOf,
+					score,
+					inks,
+					ribbonGroups: groups,
+					unsure,
+					moments,
+				},
 				model?.selectedSection !== null && window.section === model?.selectedSection,
 			);
 		});
@@ -121,7 +150,7 @@ export function createStaves(host: HTMLElement, handlers: StavesHandlers): Stave
 			if (!stale.has(row)) continue;
 			const place = row.element.getBoundingClientRect();
 			if (place.bottom < box.top - 80 || place.top > box.bottom + 80) continue;
-			row.draw(model?.analysis ?? null, peaksKey);
+			row.draw(model?.analysis ?? null, String(musicKey));
 			stale.delete(row);
 		}
 	};
@@ -155,7 +184,11 @@ export function createStaves(host: HTMLElement, handlers: StavesHandlers): Stave
 			y: y - box.top,
 		};
 	};
-	const pointing = attachPointing(host, under, handlers, hint, () => beatMap);
+	const freeze = (on: boolean) => {
+		frozen = on ? beatMap : null;
+		if (!on) lay();
+	};
+	const pointing = attachPointing({ host, under, handlers, hint, freeze, beatMap: () => beatMap });
 	host.addEventListener("scroll", () => drawVisible(false), { passive: true });
 	host.append(hint);
 
@@ -196,88 +229,4 @@ function stripRow(show: Show, beatMap: BeatMap, strip: { from: number; to: numbe
 		from: strip.from,
 		to: strip.to,
 	};
-}
-
-type Under = (x: number, y: number) => { row: StaveRow; position: number; x: number; y: number } | null;
-
-/** Pointer on the staves: select, drag with snapping, seek and scrub, zoom. Ends with the returned controller. */
-function attachPointing(
-	host: HTMLElement,
-	under: Under,
-	handlers: StavesHandlers,
-	hint: HTMLElement,
-	beatMap: () => BeatMap,
-): AbortController {
-	const ending = new AbortController();
-	const { signal } = ending;
-	let drag: { offset: number; moved: boolean; begun: boolean; id: string; part: DragPart; x: number } | null = null;
-	let scrubbing = false;
-	const finish = (keep: boolean) => {
-		if (drag?.begun) handlers.endDrag(keep);
-		drag = null;
-		scrubbing = false;
-		hint.hidden = true;
-	};
-	host.addEventListener(
-		"pointerdown",
-		(event) => {
-			const found = event.button === 0 ? under(event.clientX, event.clientY) : null;
-			if (!found?.row.picture || !(event.target instanceof Node) || !found.row.body.contains(event.target)) return;
-			const target = targetAt(found.row.picture, found.x, found.y);
-			host.setPointerCapture(event.pointerId);
-			if (target.kind === "music") {
-				scrubbing = true;
-				handlers.selectCue(null, false);
-				handlers.seek(beatMap().secondsAt(found.position));
-				return;
-			}
-			handlers.selectCue(target.id, event.shiftKey || event.ctrlKey || event.metaKey);
-			drag = { offset: found.position, moved: false, begun: false, id: target.id, part: target.part, x: event.clientX };
-		},
-		{ signal },
-	);
-	host.addEventListener(
-		"pointermove",
-		(event) => {
-			const found = under(event.clientX, event.clientY);
-			if (!found?.row.picture) return;
-			if (scrubbing) return handlers.seek(beatMap().secondsAt(found.position));
-			if (!drag) {
-				const target = targetAt(found.row.picture, found.x, found.y);
-				host.dataset.over = target.kind === "cue" ? (target.part === "whole" ? "cue" : "edge") : "music";
-				return;
-			}
-			if (!drag.moved && Math.abs(event.clientX - drag.x) < 4) return;
-			drag.moved = true;
-			if (!drag.begun) {
-				drag.begun = handlers.beginDrag(drag.id, drag.part);
-				if (!drag.begun) return finish(false);
-				drag.offset = drag.part === "whole" ? drag.offset : 0;
-			}
-			// An edge goes to the pointer; a whole cue keeps where it was taken: its own start is added by the handler.
-			const raw = drag.part === "whole" ? found.position - drag.offset : found.position;
-			const reason = handlers.drag(snapPosition(raw, event));
-			hint.hidden = reason === null;
-			if (reason !== null) {
-				hint.textContent = reason;
-				const box = host.getBoundingClientRect();
-				hint.style.transform = `translate(${event.clientX - box.left + 12}px, ${event.clientY - box.top + host.scrollTop + 16}px)`;
-			}
-		},
-		{ signal },
-	);
-	host.addEventListener("pointerup", () => finish(true), { signal });
-	host.addEventListener("pointercancel", () => finish(false), { signal });
-	window.addEventListener("keydown", (event) => event.key === "Escape" && drag?.begun && finish(false), { signal });
-	host.addEventListener(
-		"wheel",
-		(event) => {
-			if (!event.ctrlKey && !event.metaKey) return;
-			event.preventDefault();
-			const found = under(event.clientX, event.clientY);
-			if (found) handlers.zoom(Math.exp(event.deltaY * 0.004), found.position);
-		},
-		{ signal, passive: false },
-	);
-	return ending;
 }

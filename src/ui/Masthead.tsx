@@ -3,7 +3,7 @@ import { useCallback, useRef } from "react";
 import { Button, Header, Menu, MenuItem, MenuSection, MenuTrigger, Popover, Text } from "react-aria-components";
 import type { Action } from "./actions.ts";
 import { desk } from "./desk.ts";
-import { sayTime, trim } from "./say-place.ts";
+import { sayPlace, sayTime } from "./say-place.ts";
 import { useStudioState } from "./studio-context.ts";
 import { useBeatMap, useFrame } from "./use-frame.ts";
 
@@ -61,8 +61,7 @@ function Place() {
 	const time = useRef<HTMLSpanElement>(null);
 	const listener = useCallback(
 		(seconds: number) => {
-			const { bar, beat } = beatMap.barAt(Math.round(beatMap.positionAt(seconds) * 1000) / 1000);
-			const words = `bar ${bar} · beat ${trim(Math.floor(beat + 0.02))}`;
+			const words = sayPlace(Math.floor(beatMap.positionAt(seconds) + 0.02), beatMap, " · ");
 			if (place.current && place.current.textContent !== words) place.current.textContent = words;
 			const clock = sayTime(seconds);
 			if (time.current && time.current.textContent !== clock) time.current.textContent = clock;

@@ -1,8 +1,9 @@
 import { useCallback, useEffect, useMemo, useRef } from "react";
 import { useStore } from "zustand";
-import type { CueDrag } from "../app/index.ts";
+import type { BeatDrag, CueDrag } from "../app/index.ts";
 import { createStaves, type Staves } from "../staves/index.ts";
 import { desk } from "./desk.ts";
+import { sayTime } from "./say-place.ts";
 import { useStudio, useStudioState } from "./studio-context.ts";
 import { useBeatMap, useFrame, useFrameLoop } from "./use-frame.ts";
 import { followStrip, zoomStrip } from "./zoom-strip.ts";
@@ -25,6 +26,7 @@ export function StavesPane() {
 	useEffect(() => {
 		if (!host.current) return;
 		let drag: CueDrag | null = null;
+		let beatDrag: BeatDrag | null = null;
 		const { commands } = studio;
 		const made = createStaves(host.current, {
 			seek: (seconds) => commands.seek(seconds),
@@ -47,6 +49,22 @@ export function StavesPane() {
 				else drag?.cancel();
 				drag = null;
 			},
+			beginBeatDrag: (beat) => {
+				beatDrag = studio.dragBeat(beat);
+				return beatDrag !== null;
+			},
+			dragBeat: (seconds, free) => {
+				const said = beatDrag?.update(seconds, free) ?? "";
+				if (typeof said === "string") return said;
+				const ms = Math.round(said.moved * 1000);
+				return `${sayTime(said.at)}, ${ms < 0 ? "−" : "+"}${Math.abs(ms)} ms`;
+			},
+			endBeatDrag: (keep) => {
+				if (keep) beatDrag?.commit();
+				else beatDrag?.cancel();
+				beatDrag = null;
+			},
+			insertBeat: (after) => commands.insertBeat(after),
 			zoom: (factor, about) => zoomStrip({ studio, loop }, factor, about),
 		});
 		staves.current = made;

@@ -319,6 +319,22 @@ function musicActions({ studio }: ActionParts, hasShow: () => boolean, canEdit: 
 			run: () => nudge(0.01),
 		},
 		{
+			id: "beat-hair-earlier",
+			name: "This beat 1 ms earlier",
+			keys: "Shift+,",
+			theme: "Music",
+			available: canEdit,
+			run: () => nudge(-0.001),
+		},
+		{
+			id: "beat-hair-later",
+			name: "This beat 1 ms later",
+			keys: "Shift+.",
+			theme: "Music",
+			available: canEdit,
+			run: () => nudge(0.001),
+		},
+		{
 			id: "insert-beat",
 			name: "Put a beat in after this one",
 			theme: "Music",

@@ -10,16 +10,19 @@ const NAMED: Record<string, string> = {
 	"=": "+",
 };
 
+const PLAIN: Record<string, string> = { Comma: ",", Period: "." };
+
 /** "Ctrl+Shift+Z" of a key event; Command counts as Ctrl. */
 export function nameKeys(
 	event: Pick<KeyboardEvent, "key" | "code" | "ctrlKey" | "metaKey" | "altKey" | "shiftKey">,
 ): string {
-	const digit = /^Digit(\d)$/.exec(event.code)?.[1];
+	// With Shift the sign on a digit's or a comma's key differs from country to country: the key counts.
+	const plain = /^Digit(\d)$/.exec(event.code)?.[1] ?? PLAIN[event.code];
 	const key =
-		digit && event.shiftKey
-			? digit
+		plain && event.shiftKey
+			? plain
 			: (NAMED[event.key] ?? (event.key.length === 1 ? event.key.toUpperCase() : event.key));
-	const named = key.length > 1 || /[A-Z0-9]/.test(key);
+	const named = key.length > 1 || /[A-Z0-9]/.test(key) || key === plain;
 	const parts: string[] = [];
 	if (event.ctrlKey || event.metaKey) parts.push("Ctrl");
 	if (event.altKey) parts.push("Alt");

@@ -1,9 +1,10 @@
 import type { BeatMap } from "../core/show/index.ts";
 
-/** "bar 33 · beat 2" with a fraction where there is one. */
-export function sayPlace(position: number, beatMap: BeatMap): string {
+/** "bar 33, beat 2" with a fraction where there is one; "2 beats before bar 1" in a pickup. */
+export function sayPlace(position: number, beatMap: BeatMap, between = ", "): string {
 	const { bar, beat } = barBeat(position, beatMap);
-	return `bar ${bar}, beat ${trim(beat)}`;
+	if (bar < 1) return `${sayBeats(beatMap.positionOf(1) - position)} before bar 1`;
+	return `bar ${bar}${between}beat ${trim(beat)}`;
 }
 
 /** "33.2", or "33.2+0.25" between beats: what the fields show and take. */

@@ -6,6 +6,7 @@ import { decodeAudio } from "../../src/core/decode/index.ts";
 import { analyse } from "../../src/core/music/index.ts";
 import { readShow } from "../../src/core/show/index.ts";
 import { openStage, type Stage } from "./browser.ts";
+import { saveByDownload, savedShow } from "./saved-show.ts";
 
 const demos = resolve(import.meta.dirname, "../../demo-tracks");
 
@@ -16,11 +17,7 @@ async function beatsOfPage(page: Page, name: string, bytes: Buffer): Promise<rea
 		.setInputFiles({ name, mimeType: "audio/any", buffer: bytes });
 	await page.getByRole("button", { name: new RegExp(`^${name.replace(/\..*$/, "")}`) }).waitFor({ timeout: 60_000 });
 	await page.waitForFunction(() => !document.querySelector(".job"), undefined, { timeout: 60_000 });
-	const [download] = await Promise.all([
-		page.waitForEvent("download", { timeout: 30_000 }),
-		page.keyboard.press("Control+s"),
-	]);
-	return readShow(readFileSync(await download.path(), "utf8")).grid.beats;
+	return readShow(await savedShow(page)).grid.beats;
 }
 
 /** Runs in the page: the same file through the browser's own decoder, one channel as base64 of float32. */
@@ -51,9 +48,7 @@ describe("the same soundtrack", () => {
 			const bytes = readFileSync(join(demos, name));
 			const here = analyse(await decodeAudio(new Uint8Array(bytes), name));
 			const { page } = await stage.open();
-			// Without a file dialog, saving is a download.
-			await page.context().addInitScript("delete window.showSaveFilePicker");
-			await page.reload();
+			await saveByDownload(page);
 			const there = await beatsOfPage(page, name, bytes);
 			expect(there.length).toBe(here.beats.length);
 			// Engines may differ in the last bit of a sine; a thousandth of a millisecond is far above that.

@@ -2,6 +2,7 @@ import type { Page } from "playwright-core";
 import { afterAll, beforeAll, describe, expect, it } from "vitest";
 import { openStage, type Stage } from "./browser.ts";
 import { makeTrack } from "./make-track.ts";
+import { saveByDownload, savedShow } from "./saved-show.ts";
 
 /** The beats put right by hand, by keyboard alone. */
 describe("putting the beats right", () => {
@@ -13,6 +14,7 @@ describe("putting the beats right", () => {
 
 	it("halves the beats, taps them along at the right level, moves one, sets a metre, and takes it all back", async () => {
 		const { page, complaints } = await stage.open();
+		await saveByDownload(page);
 		const track = makeTrack(104, 24, 5);
 		await page.getByLabel("Open a soundtrack or a show", { exact: true }).setInputFiles({
 			name: "tapped.wav",
@@ -21,6 +23,8 @@ describe("putting the beats right", () => {
 		});
 		await page.getByText(/About 104 beats a minute/).waitFor({ timeout: 60_000 });
 		await expect.poll(() => page.locator(".job").count(), { timeout: 60_000 }).toBe(0);
+		await page.locator("body").click({ position: { x: 2, y: 2 } });
+		const before = await savedShow(page);
 		await find(page, "Half as many beats");
 		const place = page.locator(".place strong");
 
@@ -57,6 +61,7 @@ describe("putting the beats right", () => {
 			.getByRole("button", { name: "Nothing to undo" })
 			.or(page.getByRole("button", { name: /^Undo: Open/ }))
 			.waitFor();
+		expect(await savedShow(page)).toBe(before);
 		expect(complaints).toEqual([]);
 	});
 });

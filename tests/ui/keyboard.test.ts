@@ -24,6 +24,12 @@ describe("names of keys", () => {
 		expect(nameKeys(event("1", "Digit1"))).toBe("1");
 	});
 
+	it("read a shifted comma as the comma on every layout", () => {
+		expect(nameKeys(event("<", "Comma", ["shift"]))).toBe("Shift+,");
+		expect(nameKeys(event(":", "Period", ["shift"]))).toBe("Shift+.");
+		expect(nameKeys(event(",", "Comma"))).toBe(",");
+	});
+
 	it("take a sign as it is", () => {
 		expect(nameKeys(event("?", "Slash", ["shift"]))).toBe("?");
 		expect(nameKeys(event("+", "Equal", ["shift"]))).toBe("+");

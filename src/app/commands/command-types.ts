@@ -185,3 +185,15 @@ export interface CueDrag {
 	commit(): void;
 	cancel(): void;
 }
+
+/** A drag of one beat; its neighbours follow as far as the anchors beside it. */
+export interface BeatDrag {
+	/**
+	 * @param seconds where the beat is taken to
+	 * @param free false: it goes to an onset of the sound near there, if there is one
+	 * @returns where it stands now, and how far that is from where it was taken, in seconds; or why it can't go there
+	 */
+	update(seconds: number, free: boolean): { readonly at: number; readonly moved: number } | string;
+	commit(): void;
+	cancel(): void;
+}
