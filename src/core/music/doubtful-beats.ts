@@ -24,3 +24,12 @@ export function doubtfulBeats(
 	});
 	return doubtful;
 }
+
+/** Seconds at which each stretch of doubtful beats begins. */
+export function doubtfulPlaces(
+	grid: Pick<Grid, "beats" | "anchors">,
+	heard: Pick<Analysis, "beats" | "beatConfidence">,
+): number[] {
+	const doubtful = doubtfulBeats(grid, heard);
+	return doubtful.filter((beat, k) => beat - 1 !== doubtful[k - 1]).map((beat) => grid.beats[beat]);
+}

@@ -93,6 +93,8 @@ export function findBoundaries(likeness: BarLikeness, detail = 0.5): number[] {
 	for (let end = 1; end <= count; end++) {
 		for (let length = 1; length <= Math.min(LONGEST, end); length++) {
 			const from = end - length;
+			// A last bar by itself is the end of what went before: a closing chord.
+			if (end === count && length === 1 && from > 0) continue;
 			const like = scores[from * (LONGEST + 1) + length] * unit;
 			const start = from === 0 ? 0 : NOVELTY * novelty[from] - cost;
 			const value = best[from] + LIKENESS * like - LENGTH * lengthPenalty(length) + start;

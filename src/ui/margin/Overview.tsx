@@ -1,13 +1,16 @@
 import { sayCare } from "../../core/flight/index.ts";
+import { doubtfulPlaces } from "../../core/music/index.ts";
 import { desk } from "../desk.ts";
 import { TextField } from "../fields/Field.tsx";
 import { saySeconds, sayTime } from "../say-place.ts";
 import { useStudio, useStudioState } from "../studio-context.ts";
+import { toDoubt } from "../to-doubt.ts";
 import { Cautions } from "./Margin.tsx";
 
 /** Nothing is selected: how the show stands, and what to do next. */
 export function Overview() {
-	const { commands } = useStudio();
+	const studio = useStudio();
+	const { commands } = studio;
 	const show = useStudioState((state) => state.show);
 	const analysis = useStudioState((state) => state.analysis);
 	const soundNotes = useStudioState((state) => state.soundNotes);
@@ -18,6 +21,8 @@ export function Overview() {
 	const readOnly = useStudioState((state) => state.readOnly !== null);
 	if (!show) return null;
 	const matters = care ? sayCare(show, care).filter(({ attention }) => attention) : [];
+	const doubtful = analysis ? doubtfulPlaces(show.grid, analysis).length : 0;
+	const notes = new Set([...soundNotes, ...(analysis?.notes ?? []), ...(check?.notes ?? [])]);
 	const noCues = show.cues.order.length === 0;
 	return (
 		<>
@@ -36,11 +41,17 @@ export function Overview() {
 					The soundtrack {show.soundtrack.file} is not here: open it, and it is joined to this show.
 				</p>
 			)}
-			{[...soundNotes, ...(analysis?.notes ?? []), ...(check?.notes ?? [])].map((note) => (
+			{[...notes].map((note) => (
 				<p key={note} className="quiet small">
 					{note}
 				</p>
 			))}
+			{doubtful > 0 && (
+				<p>
+					The beat is uncertain in {doubtful === 1 ? "one place" : `${doubtful} places`}, under a wavy line: listen
+					there with the click track.
+				</p>
+			)}
 			{matters.length > 0 && (
 				<p>
 					Beside the proof, {sayList(matters.map(({ heading }) => heading.toLowerCase()))}{" "}
@@ -62,6 +73,11 @@ export function Overview() {
 						onClick={() => desk.setState({ asksRoughCut: true })}
 					>
 						Make a rough cut …
+					</button>
+				)}
+				{doubtful > 0 && (
+					<button type="button" onClick={() => toDoubt(studio)}>
+						Next uncertain beat
 					</button>
 				)}
 				{matters.length > 0 && (

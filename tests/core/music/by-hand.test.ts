@@ -1,5 +1,5 @@
 import { describe, expect, it } from "vitest";
-import { doubtfulBeats, nearestOnset } from "../../../src/core/music/index.ts";
+import { doubtfulBeats, doubtfulPlaces, nearestOnset } from "../../../src/core/music/index.ts";
 
 describe("the onset nearest to a place", () => {
 	/** Peaks 200 a second: hum, and strokes that set in at given times and die away. */
@@ -44,6 +44,11 @@ describe("doubtful beats", () => {
 
 	it("are those that the analysis was unsure of", () => {
 		expect(doubtfulBeats({ beats: [1, 1.5, 2, 2.5, 3] }, heard)).toEqual([1, 2, 3]);
+	});
+
+	it("begin in as many places as there are stretches of them", () => {
+		expect(doubtfulPlaces({ beats: [1, 1.5, 2, 2.5, 3] }, heard)).toEqual([1.5]);
+		expect(doubtfulPlaces({ beats: [1, 1.5, 2.1, 2.5, 3] }, heard)).toEqual([1.5, 2.5]);
 	});
 
 	it("are none that were moved, followed, were put in, or are held", () => {
