@@ -27,6 +27,8 @@ const STEP = 0.5;
 const SLOWEST = 46;
 const FASTEST = 235;
 const OUTSIDE = 10;
+/** What a step costs in which a reading has no beats yet, or none any more, though people count on. */
+const ABSENT = 6;
 /** Seconds within which two readings' beats are the same beat. */
 const SAME = 0.03;
 
@@ -52,14 +54,23 @@ export function highestNear(curve: Float32Array, rate: number, time: number): nu
 	return most;
 }
 
-/** What a reading gains in each step of time. */
-function gainsOf(activation: ActivationCurves, reading: Reading, worth: Float64Array): Float64Array {
+/**
+ * What a reading gains in each step of time.
+ * @param own the beats as walked: where they go on, a reading that has ended, or has not begun, is none
+ */
+function gainsOf(activation: ActivationCurves, reading: Reading, worth: Float64Array, own: Float64Array): Float64Array {
 	const steps = worth.length;
 	const gains = new Float64Array(steps);
 	const { beats, barGains } = reading;
+	const stepOf = (time: number): number => Math.min(steps - 1, Math.max(0, Math.floor(time / STEP)));
+	const last = beats.length - 1;
+	const first = beats[0] - (beats[1] - beats[0]);
+	const end = beats[last] + (beats[last] - beats[last - 1]);
+	for (let s = stepOf(own[0]); s < stepOf(first); s++) gains[s] -= ABSENT;
+	for (let s = stepOf(end) + 1; s <= stepOf(own[own.length - 1]); s++) gains[s] -= ABSENT;
 	for (let k = 0; k < beats.length; k++) {
 		const interval = k > 0 ? beats[k] - beats[k - 1] : beats[1] - beats[0];
-		const step = Math.min(steps - 1, Math.floor(beats[k] / STEP));
+		const step = stepOf(beats[k]);
 		let gain = logOdds(highestNear(activation.beat, activation.rate, beats[k])) - worth[step];
 		gain += priorOf(interval) + BARS_IN_LEVEL * barGains[k];
 		if (interval > 60 / SLOWEST || interval < 60 / FASTEST) gain -= OUTSIDE;
@@ -149,7 +160,7 @@ export function chooseBeats(activation: ActivationCurves, readings: readonly Rea
 	const steps = Math.max(1, Math.ceil(activation.beat.length / activation.rate / STEP));
 	const worth = weighWorth(activation, readings[0].beats, steps);
 	const chosen = chooseReadings(
-		readings.map((reading) => gainsOf(activation, reading, worth)),
+		readings.map((reading) => gainsOf(activation, reading, worth, readings[0].beats)),
 		weighChanges(readings[0].beats, steps),
 	);
 	const beats: number[] = [];

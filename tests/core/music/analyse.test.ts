@@ -1,5 +1,6 @@
 import { describe, expect, it } from "vitest";
-import { type Analysis, analyse } from "../../../src/core/music/index.ts";
+import { createRandom } from "../../../src/core/maths/index.ts";
+import { type Analysis, analyse, DOUBTFUL } from "../../../src/core/music/index.ts";
 import { StarstaveError } from "../../../src/core/units/index.ts";
 import { beatF, eventF } from "../../oracles/music-metrics.ts";
 import { type Part, type Performance, playBand, playMumble, playNoise } from "./play-band.ts";
@@ -36,6 +37,28 @@ describe("beats and bars of music whose beats are known", () => {
 		expectRight(analysis, truth);
 		expect(analysis.confidence).toBeGreaterThan(0.4);
 		expect(Math.abs(analysis.tempo.bpm / parts[0].bpm - 1)).toBeLessThan(0.02);
+	});
+
+	it("is counted on through a stretch in which nothing keeps time, and that stretch is doubtful", () => {
+		const truth = playBand([part({ bars: 12 })]);
+		const random = createRandom(3);
+		let slow = 0;
+		const noise = Float32Array.from({ length: 15 * RATE }, () => {
+			slow = 0.98 * slow + 0.02 * (random.next() - 0.5);
+			return 2 * slow;
+		});
+		const [a, b] = [truth.samples.length, truth.samples.length + noise.length];
+		const whole = new Float32Array(a + b);
+		whole.set(truth.samples);
+		whole.set(noise, a);
+		whole.set(truth.samples, b);
+		const { beats, beatConfidence } = hear(whole);
+		const within = [...beats.keys()].filter((k) => beats[k] > a / RATE + 2 && beats[k] < b / RATE - 2);
+		const longest = Math.max(...Array.from(beats.subarray(1), (beat, k) => beat - beats[k]));
+		expect(longest).toBeLessThan(2);
+		expect(within.length).toBeGreaterThan(6);
+		const doubtful = within.filter((k) => beatConfidence[k] < DOUBTFUL).length;
+		expect(doubtful).toBeGreaterThan(0.9 * within.length);
 	});
 
 	it("silence at either end gets no beats", () => {
