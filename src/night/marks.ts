@@ -31,7 +31,9 @@ export function drawMarks(
 	height: number,
 	ratio: number,
 ): void {
-	pen.clearRect(0, 0, width, height);
+	// In Chromium 156 a clear that no drawing follows is lost, and the marks of the frame before stay; a reset is not.
+	if (typeof pen.reset === "function") pen.reset();
+	else pen.clearRect(0, 0, width, height);
 	if (marks.ground) drawGround(pen, camera, marks.ground, width, height, ratio);
 	const at = (drone: number) =>
 		projectPoint(camera, positions[3 * drone]!, positions[3 * drone + 1]!, positions[3 * drone + 2]!, width, height);

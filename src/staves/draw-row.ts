@@ -85,15 +85,25 @@ function drawGrid(pen: CanvasRenderingContext2D, picture: RowPicture): void {
 			pen.fillText(String(place.bar), x + 4, lanes.waveTop - 4);
 		}
 	}
-	pen.fillStyle = inks.music;
+	drawMoments(pen, picture);
+}
+
+/** Moments hang from the top of the music; where there is room, their names stand beside them. */
+function drawMoments(pen: CanvasRenderingContext2D, picture: RowPicture): void {
+	const { row, lanes, inks, pixelsPerBeat } = picture;
+	pen.font = `12px ${inks.sans}`;
 	for (const moment of picture.moments) {
 		if (moment.at < row.from || moment.at >= row.to) continue;
 		const x = xOf(picture, moment.at);
+		pen.fillStyle = inks.ink;
 		pen.beginPath();
-		pen.moveTo(x - 3, lanes.waveTop - 8);
-		pen.lineTo(x + 3, lanes.waveTop - 8);
-		pen.lineTo(x, lanes.waveTop - 2);
+		pen.moveTo(x - 4, lanes.waveTop);
+		pen.lineTo(x + 4, lanes.waveTop);
+		pen.lineTo(x, lanes.waveTop + 7);
 		pen.fill();
+		if (pixelsPerBeat <= 30) continue;
+		pen.fillStyle = inks.quiet;
+		pen.fillText(moment.kind, x + 8, lanes.waveTop + 9);
 	}
 }
 

@@ -15,7 +15,7 @@ export function KeysList({ actions }: { actions: readonly Action[] }) {
 					<Heading slot="title">Keys</Heading>
 					<p className="quiet small">
 						On the staves: drag an end or a whole cue; it snaps to beats, with Shift to quarters, with Alt to nothing.
-						Ctrl and the wheel zoom.
+						Drag a beat by its tick: it finds an onset of the sound, with Alt it doesn't. Ctrl and the wheel zoom.
 					</p>
 					<div className="keys">
 						{themes.map((theme) => (

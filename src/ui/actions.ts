@@ -211,6 +211,8 @@ function musicActions({ studio }: ActionParts, hasShow: () => boolean, canEdit: 
 		const index = current >= 0 ? current + direction : nearest >= 0 ? nearest : direction > 0 ? cues.length - 1 : 0;
 		const cue = cues[Math.min(cues.length - 1, Math.max(0, index))];
 		commands.selectCue(cue.id);
+		// As a click on it does: what was selected is shown.
+		desk.setState({ margin: "detail" });
 		commands.seek(map.secondsAt(cuePosition(cue, map)));
 	};
 	const positionHere = () => beatMap().positionAt(studio.player.heardAt(performance.now()));

@@ -43,11 +43,11 @@ export function HandOff() {
 					onSet={setLightRows}
 				/>
 				<ChoiceField
-					label="timecode"
+					label="timecode, frames a second"
 					value={rate}
 					choices={RATES.map((value) => ({
 						value,
-						name: value === "29.97" ? "29.97 drop-frame" : `${value} frames a second`,
+						name: value === "29.97" ? "29.97 drop-frame" : value,
 					}))}
 					onSet={setRate}
 				/>

@@ -30,7 +30,7 @@ export function SectionDetail({ section }: { section: Section }) {
 					onSet={(name) => commands.renameSection(section.id, name)}
 				/>
 				<TextField
-					label="letter (same letter: same music)"
+					label="letter"
 					value={section.letter}
 					disabled={readOnly}
 					onSet={(letter) => commands.setSectionLetter(section.id, letter)}
@@ -43,6 +43,7 @@ export function SectionDetail({ section }: { section: Section }) {
 					onSet={(at) => commands.moveSectionStart(section.id, Math.round(at))}
 				/>
 			</div>
+			<p className="quiet small">Sections with the same letter are the same music.</p>
 			<div className="buttons">
 				<button type="button" disabled={readOnly} onClick={() => commands.setLoop({ from, to })}>
 					Loop it
