@@ -7,7 +7,7 @@ import { CHROMA_RATE, CHROMA_SIZE, type Harmony } from "./harmony.ts";
 const STEPS = 8;
 /** Cosine coefficients of the mel bands that tell timbre. */
 const COSINES = 20;
-const CHROMA_SHARE = 0.5;
+const CHROMA_SHARE = 0.35;
 /** Spread of the Gaussian that turns distance into likeness, as a share of the track's mean squared distance. */
 const SPREAD = 0.5;
 const WIDTH = STEPS * (COSINES + CHROMA_SIZE);
