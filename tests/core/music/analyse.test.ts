@@ -211,6 +211,27 @@ describe("an honest answer to anything", () => {
 		}
 	});
 
+	it("pink noise, and a single click: none, or low confidence", () => {
+		const random = createRandom(21);
+		// Voss and McCartney: sixteen sources of noise, each held twice as long as the one before.
+		const held = new Float64Array(16);
+		const pink = Float32Array.from({ length: 20 * RATE }, (_, i) => {
+			for (let k = 0; k < 16; k++) if (i % 2 ** k === 0) held[k] = random.next() - 0.5;
+			return held.reduce((sum, x) => sum + x, 0) / 16;
+		});
+		expect(hear(pink).confidence).toBeLessThan(DOUBTFUL);
+		const click = new Float32Array(10 * RATE);
+		click[3 * RATE] = 1;
+		expect(hear(click).confidence).toBeLessThan(DOUBTFUL);
+	});
+
+	it("music that stands off the middle, or is recorded at 96 kHz: still right", () => {
+		const truth = playBand([part({ bars: 8 })]);
+		expectRight(hear(truth.samples.map((x) => 0.5 * x + 0.4)), truth);
+		const fine = playBand([part({ bars: 8 })], 96_000);
+		expectRight(hear(fine.samples, 96_000), fine);
+	});
+
 	it("clipped to a fifth: still right", () => {
 		const truth = playBand([part()]);
 		expectRight(hear(truth.samples.map((x) => Math.max(-0.2, Math.min(0.2, x * 2)))), truth);
