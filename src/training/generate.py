@@ -1,13 +1,14 @@
 """Render training music: generate.py OUT --songs POP909_FOLDER --fonts A.sf2 B.sf3 ... --count N --seed S
 
 Each shard OUT/SEED-NNNN.npz holds 25 excerpts of 32-42 s: raw features (float16), beats (s), downbeat flags, whether the downbeats
-are to be trusted, and the source (a song's name or 'rules'). The sound itself is not kept. The same seed gives the same music.
+are to be trusted, and the source (a song's name, 'rules' or 'machine'). The sound itself is not kept. The same seed gives the same music.
 """
 import argparse
 import os
 import numpy as np
 import drums
 import features
+import machine
 import parts
 import pieces
 import sound
@@ -154,6 +155,15 @@ def render(rng, synths, songs):
     return features.hear(x).astype(np.float16), (times + lead_in)[heard].astype(np.float32), flags[heard], source
 
 
+def render_machine(rng, songs):
+    """An excerpt as a sequencer would play it."""
+    tempo, piece, times = machine.compose(rng, songs)
+    x, (first, last), with_drums = machine.perform(rng, piece, times, tempo)
+    x = sound.roughen(rng, x)
+    heard, flags = label(piece, times.size, first, last, with_drums)
+    return features.hear(x).astype(np.float16), times[heard].astype(np.float32), flags[heard], 'machine'
+
+
 def without_beat(rng):
     """Sound in which nobody would tap: noise that comes and goes, tones at no rate."""
     seconds = rng.uniform(30, 36)
@@ -175,6 +185,7 @@ def main():
     ap.add_argument('--fonts', nargs='+', required=True)
     ap.add_argument('--count', type=int, default=1500)
     ap.add_argument('--seed', type=int, default=1)
+    ap.add_argument('--machine', type=float, default=0.25, help='share of excerpts as a sequencer would play them')
     ap.add_argument('--validation', action='store_true', help='use the held-out songs, and only those')
     args = ap.parse_args()
     os.makedirs(args.out, exist_ok=True)
@@ -190,7 +201,9 @@ def main():
         for i in range(SHARD):
             rng = np.random.default_rng([args.seed, shard, i])
             try:
-                raw, beats, flags, source = without_beat(rng) if rng.random() < 0.02 else render(rng, synths, songs)
+                kind = rng.random()
+                raw, beats, flags, source = without_beat(rng) if kind < 0.02 else render_machine(rng, songs) if kind < 0.02 + args.machine \
+                    else render(rng, synths, songs)
             except (ValueError, IndexError) as problem:
                 print(f'shard {shard} excerpt {i}: {problem!r}', flush=True)
                 continue
