@@ -1,9 +1,11 @@
 /** Samples → everything the tool hears in a soundtrack. */
 import { StarstaveError } from "../units/index.ts";
 import type { Analysis, MusicSection, Sound } from "./analysis.ts";
+import { type Bands, FRAME_RATE } from "./bands.ts";
 import { drawCurves } from "./curves.ts";
 import { type BarLikeness, compareBars } from "./describe-bars.ts";
 import { findBoundaries } from "./find-sections.ts";
+import { spectralFlux } from "./flux.ts";
 import { followBeats } from "./follow-beats.ts";
 import { createListener, type Heard, type Listener } from "./listen.ts";
 import type { Loudness } from "./loudness.ts";
@@ -99,7 +101,8 @@ function conclude(heard: Heard, options: AnalyseOptions): Analysis {
 	const walk = followBeats(activation, harmony, within(0.85, 0.95, "beats"));
 	const notes: string[] = [];
 	const sounding = findSound(loudness);
-	const placed = judge(placeBeats(activation, walk, soundingNear(sounding, loudness.rate)), loudness, sounding, notes);
+	const beats = placeBeats(activation, walk, soundingNear(sounding, loudness.rate), onsetNear(bands));
+	const placed = judge(beats, loudness, sounding, notes);
 	tell(0.95, "sections");
 	const curves = drawCurves(bands, loudness);
 	const edges = placed.bars.length > 0 ? barEdges(placed, duration) : new Float64Array(0);
@@ -144,6 +147,18 @@ function soundingNear(sound: Uint8Array, rate: number): (time: number) => boolea
 		const last = Math.min(sound.length - 1, Math.round((time + 0.25) * rate));
 		for (let i = Math.max(0, Math.round((time - 0.5) * rate)); i <= last; i++) if (sound[i] === 1) return true;
 		return false;
+	};
+}
+
+/** How much the bands rise from a tenth of a second before a time to a tenth after, at most in one frame. */
+function onsetNear(bands: Bands): (time: number) => number {
+	const flux = spectralFlux(bands);
+	return (time) => {
+		let most = 0;
+		const from = Math.max(0, Math.round((time - 0.1) * FRAME_RATE));
+		const to = Math.min(flux.length - 1, Math.round((time + 0.1) * FRAME_RATE));
+		for (let i = from; i <= to; i++) most = Math.max(most, flux[i]);
+		return most;
 	};
 }
 

@@ -11,6 +11,8 @@ const LATE = 0.0035;
 const LEAST_PEAK = 0.08;
 /** Share of the track's middle peak that the first and the last beat must reach. */
 const EVIDENCE = 0.35;
+/** Share of the track's middle onset that the first and the last beat must bring: a chord that dies away brings none. */
+const STRUCK = 0.1;
 /** Most beats that count as an echo. */
 const ECHO = 6;
 /** Beats on either side over which confidence is judged. */
@@ -45,28 +47,35 @@ function peakNear(activation: ActivationCurves, time: number): { time: number; h
 /**
  * @param walk beats and bars as they were followed
  * @param isSounding whether there is anything to hear near a time: beats before the first sound and after the last go
+ * @param onsetNear how much the sound rises near a time, in any unit
  */
 export function placeBeats(
 	activation: ActivationCurves,
 	walk: BarWalk,
 	isSounding: (time: number) => boolean,
+	onsetNear: (time: number) => number,
 ): PlacedBeats {
 	const peaks = Array.from(walk.beats, (time) => peakNear(activation, time));
 	const heights = Float64Array.from(peaks, (peak) => peak?.height ?? 0);
-	const typical = heights.slice().sort()[heights.length >> 1] ?? 0;
+	const onsets = walk.beats.map(onsetNear);
+	const middle = (values: Float64Array): number => values.slice().sort()[values.length >> 1] ?? 0;
+	const [typical, struck] = [middle(heights), middle(onsets)];
 	// The walk goes on for a while where nothing contradicts it: into a last chord's echo, back before a first note.
 	let from = 0;
 	let to = walk.beats.length;
 	while (from < to && !isSounding(walk.beats[from])) from++;
 	while (to > from && !isSounding(walk.beats[to - 1])) to--;
 	// A few beats without evidence are an echo; more of them are a faint intro or ending, and counted.
-	const isFaint = (k: number): boolean => heights[k] <= EVIDENCE * typical;
-	let first = from;
-	while (first < to && isFaint(first)) first++;
-	let last = to;
-	while (last > first && isFaint(last - 1)) last--;
-	if (first - from <= ECHO) from = first;
-	if (to - last <= ECHO) to = last;
+	const trim = (isFaint: (k: number) => boolean): void => {
+		let first = from;
+		while (first < to && isFaint(first)) first++;
+		let last = to;
+		while (last > first && isFaint(last - 1)) last--;
+		if (first - from <= ECHO) from = first;
+		if (to - last <= ECHO) to = last;
+	};
+	trim((k) => heights[k] <= EVIDENCE * typical);
+	trim((k) => onsets[k] < STRUCK * struck);
 	const beats = Float64Array.from({ length: to - from }, (_, k) =>
 		Math.max(0, (peaks[from + k]?.time ?? walk.beats[from + k]) - LATE),
 	);
